@@ -1,0 +1,176 @@
+"""From files to a report: the one way through all stages, for a file, for many, and for a design in memory.
+
+- `load` reads one declared design; `audit` takes paths or designs and gives an `AuditReport`.
+- A file that can't be read is kept among the report's faults; the others are still audited.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator
+from dataclasses import dataclass
+from pathlib import Path
+
+from checker import __version__
+from checker.review.catalogue import Catalogue, load_catalogue, rules_digest
+from checker.review.claims import case_row, claims_of, member_row
+from checker.review.drafts import Check, Draft
+from checker.review.engine import Engine, annex_path, engine, shape_layers
+from checker.review.evaluated import evaluate
+from checker.review.findings import CaseResult, MemberResult, number_findings, outcome_of, worst
+from checker.review.judge import judge
+from checker.review.subject import Subject, subject_of
+from checker.declared.build import load_file
+from checker.declared.model import Design
+from checker.errors import Fault, InputFaults, RuleFaults
+from checker.geometry.measure import Measured, measure
+from checker.report.audit_report import AuditReport, Input, Stamp
+
+SUFFIXES = (".yaml", ".yml", ".json")
+STANDARD = "EN 1992-1-1:2004"
+NOT_SHOWN = ("section", "flag")
+
+Item = str | Path | Design
+
+
+@dataclass(frozen=True)
+class Options:
+    """What a run may change: an annex for all files, an office's file of rules or layers."""
+
+    annex: str | None = None
+    rules: Path | None = None
+
+
+def load(path: str | Path) -> Design:
+    """Read one declared design.
+
+    Raises:
+        InputFaults: every fault of the file, each with line and column.
+    """
+    return load_file(Path(path), Path(path).as_posix())
+
+
+def audit(
+    items: Item | Iterable[Item], *, annex: str | None = None, rules: str | Path | None = None
+) -> AuditReport:
+    """Audit declared designs and give one report over all of them.
+
+    Args:
+        items: files, folders, or designs already loaded.
+        annex: national layer to use instead of the one each file names (a name or a layer file).
+        rules: a file of rules and layers of an office.
+
+    Raises:
+        RuleFaults: the annex or the rule file can't be used.
+    """
+    options = Options(annex, Path(rules) if rules is not None else None)
+    catalogue = load_catalogue(options.rules, options.rules.name if options.rules else "")
+    if annex is not None:
+        annex_path(annex)
+    members: list[MemberResult] = []
+    inputs: list[Input] = []
+    faults: list[Fault] = []
+    annexes: dict[str, None] = {}
+    for item in _expanded([items] if isinstance(items, str | Path | Design) else items, faults):
+        try:
+            design = item if isinstance(item, Design) else load(item)
+            measured = measure(design)
+            annexes[_annex_of(design, options)] = None
+            start = 1 + sum(len(member.findings) for member in members)
+            members.append(audit_member(design, measured, catalogue, options, start))
+        except RuleFaults:
+            raise
+        except InputFaults as error:
+            faults += error.faults
+            continue
+        inputs.append(Input(design.file, design.sha256))
+    outcome = worst(member.outcome for member in members)
+    return AuditReport(_stamp(annexes, options), tuple(inputs), outcome, tuple(members), tuple(faults))
+
+
+def audit_member(
+    design: Design, measured: Measured, catalogue: Catalogue, options: Options, start: int = 1
+) -> MemberResult:
+    """Recompute, compare and judge one member; findings are numbered from `start`."""
+    compiled = engine_for(design, measured, options)
+    row = member_row(design, measured)
+    inputs = frozenset((*compiled.scratch.inputs, *compiled.follow.inputs))
+    checks: dict[tuple[str, str | None], Check] = {}
+    drafts: list[Draft] = []
+    cases: list[CaseResult] = []
+    for case in design.cases:
+        claims = claims_of(case, measured)
+        case_values = evaluate(compiled, case, claims, case_row(row, case, claims, inputs))
+        subject = subject_of(case_values, catalogue, measured.facts, design.places)
+        found, drafted = judge(subject)
+        for check in found:
+            _keep(checks, check)
+        drafts += drafted
+        cases.append(_result(subject, compiled))
+    findings = number_findings(design.member, drafts, start)
+    outcome = outcome_of((finding.draft.gravity for finding in findings), checks.values())
+    revision = design.submission.get("revision", "")
+    return MemberResult(design.member, design.file, revision, outcome, findings, tuple(checks.values()), tuple(cases))
+
+
+def engine_for(design: Design, measured: Measured, options: Options) -> Engine:
+    """The compiled sheet that a design's standard, annex, shape and links call for."""
+    aslant = abs(measured.inputs["S_sin"] - measured.inputs["A_sw_s_all"]) > 1e-9 * measured.inputs["A_sw_s_all"]
+    layers = shape_layers(measured.shape, aslant=aslant or measured.inputs["S_cos"] > 1e-9)
+    return engine(design.standard, _annex_of(design, options), layers, options.rules)
+
+
+def _annex_of(design: Design, options: Options) -> str:
+    """The annex of a run, else the file's own; a layer file is looked for beside the design that names it."""
+    if options.annex is not None:
+        return options.annex
+    beside = Path(design.file).parent / design.annex
+    if design.annex.endswith((".yaml", ".yml")) and not Path(design.annex).is_file() and beside.is_file():
+        return beside.as_posix()
+    return design.annex
+
+
+_ORDER = ("crashed", "fail", "pass", "not checked", "not applicable")
+
+
+def _keep(checks: dict[tuple[str, str | None], Check], check: Check) -> None:
+    """One outcome a rule and case; for member-wide rules the one that says most over all cases."""
+    known = checks.get((check.rule, check.case))
+    if known is None or _ORDER.index(check.status) < _ORDER.index(known.status):
+        checks[check.rule, check.case] = check
+
+
+def _result(subject: Subject, compiled: Engine) -> CaseResult:
+    """The quantities worth showing: all but the inputs that only carry claims, flags and the section itself."""
+    quantities = compiled.sheet.quantities
+    shown = {
+        symbol: float(value)
+        for symbol, value in subject.case.scratch.items()
+        if symbol in quantities
+        and quantities[symbol].unit not in NOT_SHOWN
+        and not symbol.endswith("_declared")
+        and not symbol.startswith("cot_of_")
+        and symbol not in ("unsaid", "one", "nothing")
+    }
+    units = {symbol: quantities[symbol].unit for symbol in shown}
+    return CaseResult(subject.case.case.name, shown, units, subject.window)
+
+
+def _expanded(items: Iterable[Item], faults: list[Fault]) -> Iterator[Item]:
+    """Files as they come, folders by their declared designs in order of name."""
+    for item in items:
+        if isinstance(item, Design) or not Path(item).is_dir():
+            yield item
+            continue
+        files = sorted(path for path in Path(item).rglob("*") if path.suffix.lower() in SUFFIXES and path.is_file())
+        if not files:
+            said = f"no declared designs in this folder; expected files that end in {', '.join(SUFFIXES)}"
+            faults.append(Fault(Path(item).as_posix(), 1, 1, said))
+        yield from files
+
+
+def _stamp(annexes: Iterable[str], options: Options) -> Stamp:
+    outside = tuple(dict.fromkeys(annex_path(annex) for annex in annexes))
+    extra = (*outside, *((options.rules,) if options.rules else ()))
+    names = ", ".join(dict.fromkeys(Path(annex).name for annex in annexes)) or options.annex or "recommended"
+    digest = rules_digest(tuple(path for path in extra if path is not None))
+    return Stamp("samestrut", __version__, STANDARD, names, digest)

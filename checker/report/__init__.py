@@ -1,0 +1,1 @@
+"""Renderers: a finished report in, text out; the same facts in every format."""

@@ -1,0 +1,129 @@
+"""The report as plain data: the public, versioned JSON form; never a dump of internals.
+
+- Angles are in degrees, everything else in the shown units; values that don't exist are null.
+- No clock, no path of a machine: the same inputs, rules and version give the same bytes.
+"""
+
+from __future__ import annotations
+
+import json
+import math
+from typing import TYPE_CHECKING, Any
+
+from checker.review.drafts import Check, Draft
+from checker.review.findings import CaseResult, Finding, MemberResult
+from checker.review.window import degrees_of
+from checker.sheet.shown import to_shown
+
+if TYPE_CHECKING:
+    from checker.report.audit_report import AuditReport
+
+FORMAT = 1
+DIGITS = 9  # significant digits written: more is noise, fewer would hide a rounding
+
+
+def document_of(report: AuditReport) -> dict[str, Any]:
+    """The whole report as dictionaries and lists."""
+    stamp = report.stamp
+    return {
+        "format": FORMAT,
+        "tool": {"name": stamp.tool, "version": stamp.version},
+        "rules": {"standard": stamp.standard, "annex": stamp.annex, "digest": stamp.digest},
+        "inputs": [{"file": item.file, "sha256": item.sha256} for item in report.inputs],
+        "outcome": report.outcome,
+        "counts": report.counts,
+        "members": [_member(member) for member in report.members],
+        "faults": [
+            {"file": fault.file, "line": fault.line, "column": fault.column, "says": fault.message}
+            for fault in report.faults
+        ],
+    }
+
+
+def json_text(report: AuditReport) -> str:
+    return json.dumps(document_of(report), ensure_ascii=False, indent=1) + "\n"
+
+
+def _member(member: MemberResult) -> dict[str, Any]:
+    return {
+        "member": member.member,
+        "file": member.file,
+        "revision": member.revision,
+        "outcome": member.outcome,
+        "findings": [_finding(finding, member.file) for finding in member.findings],
+        "checks": [_check(check) for check in member.checks],
+        "cases": [_case(case) for case in member.cases],
+    }
+
+
+def _finding(finding: Finding, file: str) -> dict[str, Any]:
+    draft = finding.draft
+    return {
+        "number": finding.number,
+        "id": finding.id,
+        "rule": draft.rule,
+        "gravity": draft.gravity,
+        "direction": draft.direction,
+        "case": draft.case,
+        "cases": list(draft.cases),
+        "quantity": draft.quantity or None,
+        "unit": draft.unit or None,
+        "declared": draft.declared_text if draft.quantity == "verdict" else _shown(draft.declared, draft.unit),
+        "recomputed": _shown(draft.recomputed, draft.unit),
+        "limit": _shown(draft.limit, draft.unit),
+        "tolerance": _shown(draft.tolerance, draft.unit),
+        "ratio": _rounded(draft.ratio),
+        "clause": draft.clause,
+        "where": [{"file": file, "line": place.line, "column": place.column} for place in draft.where],
+        "says": draft.says,
+        "todo": draft.todo,
+        "slip": draft.slip,
+        "slips": list(draft.slips),
+        "shows_in": list(draft.shows_in),
+        "carried_from": finding.carried_from,
+        "implied_theta": _implied(draft),
+        "workings": {"right": draft.working or None, "wrong": None},
+    }
+
+
+def _implied(draft: Draft) -> float | None:
+    if draft.implied_cot is None or draft.implied_cot <= 0:
+        return None
+    return _rounded(math.degrees(math.atan2(1.0, draft.implied_cot)))
+
+
+def _check(check: Check) -> dict[str, Any]:
+    return {
+        "rule": check.rule,
+        "case": check.case,
+        "status": check.status,
+        "why": check.why or None,
+        "margin": _rounded(check.margin),
+    }
+
+
+def _case(case: CaseResult) -> dict[str, Any]:
+    window = case.window
+    spans = {name: degrees_of(getattr(window, name)) for name in ("links", "concrete", "bars", "admissible")}
+    return {
+        "case": case.case,
+        "quantities": {
+            symbol: {"value": _shown(value, case.units[symbol]), "unit": case.units[symbol]}
+            for symbol, value in case.values.items()
+        },
+        "window": {
+            name: None if span is None else [_rounded(end) for end in span] for name, span in spans.items()
+        },
+        "holds": window.holds,
+    }
+
+
+def _shown(value: float | None, unit: str) -> float | None:
+    return None if value is None else _rounded(to_shown(value, unit or "-"))
+
+
+def _rounded(value: float | None) -> float | None:
+    """A float that JSON can hold, without the noise of its last bits; None where there is no number."""
+    if value is None or not math.isfinite(value):
+        return None
+    return float(f"{value:.{DIGITS}g}")

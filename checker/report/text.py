@@ -1,0 +1,163 @@
+"""The report as text: what a checker reads in a minute, and can put in a letter.
+
+- The outcome first, then the numbered findings, what wasn't checked, the cautions and the stamp.
+- Colour is added by the command line, never here.
+"""
+
+from __future__ import annotations
+
+import textwrap
+from collections.abc import Iterable
+from typing import TYPE_CHECKING
+
+from checker.review.drafts import CRASHED, FAIL, NOT_APPLICABLE, NOT_CHECKED, PASS
+from checker.review.findings import CaseResult, Finding, MemberResult
+from checker.review.window import degrees_of
+from checker.sheet.shown import number, paper, with_unit
+
+if TYPE_CHECKING:
+    from checker.report.audit_report import AuditReport
+
+WIDTH = 100
+
+CAUTIONS = (
+    "This report compares a declared design with rules of the standard named above; it is not a strength prediction "
+    "and does not replace the judgement of a licensed engineer. The local code, the national annex and the project's "
+    "own specification go before it. What is listed as not checked was not checked. Values marked “memory” in the "
+    "rules (samestrut sheet) want the text of the standard beside them."
+)
+
+OUTCOME_WORDS = {
+    "accept": "ACCEPT — nothing was found",
+    "accept with remarks": "ACCEPT WITH REMARKS — nothing that needs an answer",
+    "return": "RETURN — findings need an answer",
+    "incomplete": "INCOMPLETE — a fault of this tool; the report can't be relied on",
+}
+
+
+def text_of(report: AuditReport, *, workings: bool = False) -> str:
+    """The whole report; `workings` adds the right working under each finding."""
+    parts = [_head(report)]
+    parts += [_member(member, workings=workings) for member in report.members]
+    parts.append(_foot(report))
+    return "\n\n".join(part for part in parts if part) + "\n"
+
+
+def _head(report: AuditReport) -> str:
+    counts = ", ".join(f"{count} {gravity}" for gravity, count in report.counts.items())
+    members = len(report.members)
+    lines = [
+        OUTCOME_WORDS[report.outcome],
+        f"{members} member{'s' if members != 1 else ''} audited to {report.stamp.standard}, "
+        f"annex: {report.stamp.annex}. Findings: {counts}.",
+    ]
+    if report.faults:
+        files = len({fault.file for fault in report.faults})
+        lines.append(
+            f"{files} file{'s' if files != 1 else ''} could not be read as a declared design; see the messages."
+        )
+    return "\n".join(lines)
+
+
+def _member(member: MemberResult, *, workings: bool) -> str:
+    title = f"Member {member.member}" + (f", revision {member.revision}" if member.revision else "")
+    lines = [f"{title} ({member.file}): {member.outcome}", "─" * min(WIDTH, len(title) + len(member.file) + 30)]
+    lines.append(_cases(member.cases))
+    blocks = ["\n".join(lines)]
+    if member.findings:
+        blocks.append(_overview(member))
+    blocks += [_finding(finding, member.file, workings=workings) for finding in member.findings]
+    blocks.append(_checks(member))
+    return "\n\n".join(blocks)
+
+
+def _cases(cases: Iterable[CaseResult]) -> str:
+    from tabulate import tabulate
+
+    rows = []
+    for case in cases:
+        span = degrees_of(case.window.admissible)
+        window = "none" if span is None else " to ".join(f"{number(end, 3)}°" for end in span)
+        rows.append([case.case, _action(case, "V_Ed"), _action(case, "T_Ed"), _action(case, "M_Ed"),
+                     _action(case, "N_Ed"), window, case.window.holds])  # fmt: skip
+    heads = ["case", "V_Ed", "T_Ed", "M_Ed", "N_Ed", "strut angles that hold", "as provided it holds"]
+    return str(tabulate(rows, heads, tablefmt="plain", disable_numparse=True))
+
+
+def _action(case: CaseResult, symbol: str) -> str:
+    return with_unit(case.values[symbol], case.units[symbol])
+
+
+def _overview(member: MemberResult) -> str:
+    from tabulate import tabulate
+
+    rows = [
+        [
+            finding.number,
+            finding.draft.gravity,
+            finding.draft.case or "all",
+            paper(finding.draft.quantity) if finding.draft.quantity else finding.draft.rule,
+            _value(finding, "declared"),
+            _value(finding, "recomputed"),
+            _value(finding, "limit"),
+            finding.draft.clause,
+        ]
+        for finding in member.findings
+    ]
+    heads = ["No.", "gravity", "case", "about", "declared", "recomputed", "limit", "clause"]
+    return str(tabulate(rows, heads, tablefmt="plain", disable_numparse=True, maxcolwidths=[None] * 7 + [26]))
+
+
+def _value(finding: Finding, name: str) -> str:
+    draft = finding.draft
+    if name == "declared" and draft.declared is None:
+        return draft.declared_text or "–"
+    value = getattr(draft, name)
+    return "–" if value is None else with_unit(value, draft.unit or "-")
+
+
+def _finding(finding: Finding, file: str, *, workings: bool) -> str:
+    draft = finding.draft
+    place = ", ".join(f"{file}:{spot.line}:{spot.column}" for spot in draft.where)
+    case = f"case {draft.case}" if draft.case else "cases " + ", ".join(draft.cases)
+    hangs = f", carried from No. {finding.carried_from}" if finding.carried_from else ""
+    head = f"No. {finding.number}  {draft.gravity.upper()} ({draft.direction}{hangs})  {draft.rule} [{finding.id}]"
+    body = [draft.says, f"To do: {draft.todo}"]
+    facts = "; ".join(filter(None, (f"Clause {draft.clause}" if draft.clause else "", case, place)))
+    lines = [head, *(_wrapped(text) for text in body), _wrapped(facts)]
+    if workings and draft.working:
+        lines.append(_wrapped("Working: " + draft.working))
+    return "\n".join(lines)
+
+
+def _wrapped(text: str) -> str:
+    return textwrap.fill(
+        text, WIDTH, initial_indent="    ", subsequent_indent="    ", break_long_words=False, break_on_hyphens=False
+    )
+
+
+def _checks(member: MemberResult) -> str:
+    counts = {status: 0 for status in (PASS, FAIL, NOT_APPLICABLE, NOT_CHECKED, CRASHED)}
+    for check in member.checks:
+        counts[check.status] += 1
+    lines = ["Rules: " + ", ".join(f"{count} {status}" for status, count in counts.items() if count) + "."]
+    reasons: dict[str, list[str]] = {}
+    for check in member.checks:
+        if check.status in (NOT_CHECKED, CRASHED):
+            reasons.setdefault(check.why, []).append(check.rule)
+    undeclared = [rule for why, rules in reasons.items() if why.endswith("is not declared") for rule in rules]
+    for why, rules in reasons.items():
+        if not why.endswith("is not declared"):
+            lines.append(_wrapped(f"Not checked: {', '.join(dict.fromkeys(rules))} — {why}."))
+    if undeclared:
+        names = ", ".join(dict.fromkeys(rule.removeprefix("agrees.") for rule in undeclared))
+        lines.append(_wrapped(f"Not checked, because nothing is declared for it: {names}."))
+    return "\n".join(lines)
+
+
+def _foot(report: AuditReport) -> str:
+    stamp = report.stamp
+    lines = ["Cautions", _wrapped(CAUTIONS), "Stamp"]
+    lines.append(_wrapped(f"{stamp.tool} {stamp.version}; {stamp.standard}; annex {stamp.annex}; rules {stamp.digest[:16]}"))
+    lines += [_wrapped(f"{item.file}: sha256 {item.sha256[:16]}") for item in report.inputs]
+    return "\n".join(lines)

@@ -1,0 +1,81 @@
+"""A declared value against the recomputed one: rounding first, then the rule's relative tolerance.
+
+A value agrees when |declared - recomputed| <= own rounding + inherited rounding + relative tolerance.
+It *follows* when the same holds against the value recomputed from the designer's own upstream numbers.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from checker.review.catalogue import Catalogue, Rule
+from checker.review.claims import Claim
+from checker.review.evaluated import Evaluated
+
+TINY = 1e-9
+
+
+@dataclass(frozen=True, slots=True)
+class Comparison:
+    """One declared value held against both recomputations (inside units).
+
+    Attributes:
+        reading: the accepted quantity that lies nearest (the symbol itself, or one of the rule's `or`).
+        recomputed: its value from scratch.
+        upstream: its value from the designer's own upstream numbers.
+        tolerance: the whole allowance: rounding, inherited rounding, relative tolerance.
+        agrees: right from scratch.
+        follows: right from the designer's own upstream numbers.
+    """
+
+    claim: Claim
+    rule: Rule
+    reading: str
+    recomputed: float
+    upstream: float
+    tolerance: float
+    agrees: bool
+    follows: bool
+
+
+def compare_all(case: Evaluated, catalogue: Catalogue) -> dict[str, Comparison]:
+    """Every declared number that an `agrees` rule speaks of, in the order of the sheet."""
+    position = {symbol: index for index, symbol in enumerate(case.sheet.order)}
+    found: dict[str, Comparison] = {}
+    rules = {rule.quantity: rule for rule in catalogue.rules.values() if rule.kind == "agrees"}
+    for symbol in sorted((s for s in case.claims if s in rules), key=position.__getitem__):
+        found[symbol] = compare(case, case.claims[symbol], rules[symbol])
+    return found
+
+
+def compare(case: Evaluated, claim: Claim, rule: Rule) -> Comparison:
+    """Hold one declared value against every accepted reading and keep the nearest."""
+    symbol = claim.symbol
+    readings = [symbol, *(name for name in rule.or_ if name in case.sheet.quantities)]
+    from_scratch = {name: float(case.scratch[name]) for name in readings}
+    from_upstream = {name: case.upstream(name) for name in readings}
+    reading = _nearest(claim.value, from_scratch)
+    follows_reading = _nearest(claim.value, from_upstream)
+    recomputed, upstream = from_scratch[reading], from_upstream[follows_reading]
+    allowed = claim.half_step + rule.tolerance * abs(recomputed)
+    if _within(claim.value, recomputed, allowed):
+        return Comparison(claim, rule, reading, recomputed, upstream, allowed, True, True)
+    inherited = case.inherited(symbol, follows_reading)
+    follows = _within(claim.value, upstream, claim.half_step + inherited + rule.tolerance * abs(upstream))
+    allowed += inherited
+    agrees = _within(claim.value, recomputed, allowed)
+    return Comparison(claim, rule, reading, recomputed, upstream, allowed, agrees, follows)
+
+
+def _nearest(value: float, readings: dict[str, float]) -> str:
+    """The reading nearest to a value; the rule's own symbol where nothing can be compared."""
+    first = next(iter(readings))
+    best, gap = first, abs(value - readings[first])
+    for name, reading in readings.items():
+        if not gap <= abs(value - reading):
+            best, gap = name, abs(value - reading)
+    return best if gap == gap else first
+
+
+def _within(a: float, b: float, allowed: float) -> bool:
+    return abs(a - b) <= allowed + TINY * max(abs(a), abs(b))

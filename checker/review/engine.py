@@ -1,0 +1,130 @@
+"""Sheets under their layers, compiled: what turns one row of inputs into recomputed values, twice.
+
+- *scratch*: from the geometry, the materials, the steel and the actions, with the designer's admissible choices.
+- *follow*: the designer's own declared values carried on wherever there is one.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass
+from functools import lru_cache
+from pathlib import Path
+from typing import Any
+
+from checker import shipped
+from checker.declared.symbols import DECLARABLE
+from checker.errors import Fault, RuleFaults, UsageError
+from checker.sheet.load import DECLARED, SHEET_FOLDER, lay, load_layers, load_sheet
+from checker.sheet.program import Program, Values, build
+from checker.sheet.quantities import Layer, Sheet
+
+ASLANT = "links-aslant"
+ANGLES = ("cot_theta_shear", "cot_theta_torsion")
+OPTIONAL = ("gamma_C_stated", "gamma_S_stated", "M_Ed_max", "unsaid")
+"""Inputs that a design may leave unsaid (nan)."""
+
+FOLLOWED = tuple(dict.fromkeys([*(s for s in DECLARABLE if "theta" not in s), *ANGLES]))
+"""The symbols whose declared value is carried on in the second recomputation."""
+
+
+@dataclass(frozen=True, slots=True)
+class Engine:
+    """A sheet under its layers with its two programs.
+
+    Attributes:
+        sheet: for names, units, clauses and workings.
+        scratch: all quantities of the sheet.
+        follow: the same; what can be declared also as `X__own`, its value before it was overruled.
+    """
+
+    sheet: Sheet
+    scratch: Program
+    follow: Program
+
+
+def shape_layers(shape: str, *, aslant: bool) -> tuple[str, ...]:
+    """The layers a section's shape and its links call for."""
+    names = (shape,) if shape in ("rectangle", "box") else ()
+    return (*names, ASLANT) if aslant else names
+
+
+@lru_cache(maxsize=64)
+def engine(
+    standard: str, annex: str, layers: tuple[str, ...], office: Path | None = None, *, columns: bool = False
+) -> Engine:
+    """The compiled sheet for a standard, an annex (a name or a path), shape layers and an office's layer file.
+
+    Raises:
+        RuleFaults: an unknown annex, or a layer file that can't be used.
+    """
+    sheet = sheet_under(standard, annex, layers, office)
+    wanted = [s for s, q in sheet.quantities.items() if not q.is_input]
+    scratch = build(sheet, wanted, columns=columns)
+    return Engine(sheet, scratch, build(sheet, wanted, columns=columns, follow=FOLLOWED))
+
+
+def recompute(
+    wanted: Iterable[str],
+    given: Mapping[str, Any],
+    *,
+    standard: str = "EN 1992-1-1:2004",
+    annex: str = "recommended",
+    layers: tuple[str, ...] = ("rectangle",),
+) -> Values:
+    """Single quantities from whatever is known, e.g. `recompute(["V_Rd_max"], {"b_w": 400, "z": 578, ...})`.
+
+    Args:
+        wanted: symbols of the sheet.
+        given: inside values (N, mm, MPa, rad) that stand in for inputs or formulas: plain floats, or numpy arrays.
+
+    Raises:
+        UsageError: an input that the wanted quantities rest on is missing.
+    """
+    sheet = sheet_under(standard, annex, layers)
+    columns = any(hasattr(value, "shape") for value in given.values())
+    program = build(sheet, wanted, columns=columns, given=given)
+    unsaid = {name: math.nan for name in program.inputs if name.endswith(DECLARED) or name in OPTIONAL}
+    row = {**unsaid, "link_stress_option": 0.0, "torsion_counts": 1.0, "N_Ed": 0.0, **given}
+    missing = [name for name in program.inputs if name not in row]
+    if missing:
+        raise UsageError(f"{', '.join(wanted)} can't be recomputed without {', '.join(missing)}")
+    return program.run(row)
+
+
+@lru_cache(maxsize=64)
+def sheet_under(standard: str, annex: str, layers: tuple[str, ...], office: Path | None = None) -> Sheet:
+    """The base sheet with the annex, the shape's layers and the office's layers over it, in this order."""
+    sheet = load_sheet(standard)
+    known = load_layers(shipped.folder("rules") / SHEET_FOLDER[standard] / "shapes.yaml")
+    for layer in [*_outside_layers(annex), *(known[name] for name in layers)]:
+        sheet = lay(sheet, layer)
+    if office is not None:
+        for layer in load_layers(office, shown_as=office.name).values():
+            sheet = lay(sheet, layer)
+            sheet.check_units(layer.entries)
+    return sheet
+
+
+def _outside_layers(annex: str) -> list[Layer]:
+    """The annex by name, or from a file."""
+    path = annex_path(annex)
+    layers = list(load_layers(path, shown_as=shipped.shown(path)).values())
+    return [layer for layer in layers if layer.entries]
+
+
+def annex_path(annex: str) -> Path:
+    """Where an annex's layers stand.
+
+    Raises:
+        RuleFaults: no annex of that name ships and no file of that name exists.
+    """
+    folder = shipped.folder("rules") / "annexes"
+    if (folder / f"{annex}.yaml").is_file():
+        return folder / f"{annex}.yaml"
+    path = Path(annex)
+    if path.suffix in (".yaml", ".yml") and path.is_file():
+        return path
+    names = ", ".join(sorted(p.stem for p in folder.glob("*.yaml")))
+    raise RuleFaults([Fault(annex, 1, 1, f"no such annex; known are {names}, or the path of a layer file")])

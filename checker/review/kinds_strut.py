@@ -1,0 +1,70 @@
+"""Kinds `same` and `implied`: the strut angle claimed in shear and torsion, and the one really used."""
+
+from __future__ import annotations
+
+import math
+
+from checker.review.catalogue import Rule
+from checker.review.causes import AngleUsed
+from checker.review.drafts import EITHER_SIDE, FAIL, NOT_CHECKED, PASS, Draft, apart, symbol_text
+from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
+from checker.declared.model import Place
+from checker.sheet.shown import with_unit
+
+
+def same(rule: Rule, subject: Subject) -> Outcome:
+    """Two declared angles; they are claimed as cotangents inside, and shown as angles."""
+    claims = [subject.claims.get(f"cot_{symbol}") for symbol in rule.quantities]
+    first, second = claims
+    if first is None or second is None:
+        missing = " and ".join(symbol_text(s) for s, c in zip(rule.quantities, claims, strict=True) if c is None)
+        return ended(rule, subject, NOT_CHECKED, f"{missing} is not declared"), []
+    allowed = first.half_step + second.half_step + 0.01 * max(first.value, second.value)
+    if abs(first.value - second.value) <= allowed:
+        return ended(rule, subject, PASS), []
+    degrees = [math.atan2(1.0, claim.value) for claim in (first, second)]
+    texts = apart(degrees[0], degrees[1], "deg")
+    words = words_of(subject, **dict(zip(rule.quantities, texts, strict=True)))
+    draft = draft_of(
+        rule, subject, quantity=rule.quantities[1], unit="deg", key=rule.id, says=words.fill(rule.says),
+        declared=degrees[1], declared_text=second.source.number.text, recomputed=degrees[0],
+        where=(first.source.place, second.source.place), direction=EITHER_SIDE,
+    )  # fmt: skip
+    return ended(rule, subject, FAIL), [draft]
+
+
+def implied(rule: Rule, subject: Subject) -> Outcome:
+    angles = subject.causes.angles
+    if not angles:
+        declared = [s for s in subject.case.engine.sheet.quantities if s.startswith("cot_of_")]
+        if not any(name.removeprefix("cot_of_") in subject.claims for name in declared):
+            return ended(rule, subject, NOT_CHECKED, "no declared value rests on the strut angle"), []
+        return ended(rule, subject, PASS), []
+    drafts: dict[tuple[Place, ...], Draft] = {}
+    for angle in angles:
+        used = math.atan2(1.0, angle.used)
+        shown = ", ".join(symbol_text(symbol) for symbol in angle.shows_in)
+        if angle.claim is None:
+            other = math.atan2(1.0, angle.other)
+            quantity, where = "theta_torsion", tuple(subject.claims[s].source.place for s in angle.shows_in)
+            claim = f"No strut angle is declared, but shear was worked with {with_unit(other, 'deg', 3)}"
+            implied = f"and torsion with {with_unit(used, 'deg', 3)} ({shown})."
+            declared_value, gravity = used, "breach"
+            recomputed = other
+        else:
+            quantity, where = angle.claim.source.symbol, (angle.claim.source.place,)
+            if angle.claim.source.symbol not in ("theta", "cot_theta"):
+                quantity = angle.side.removeprefix("cot_") if "cot" not in quantity else angle.side
+            declared_value = math.atan2(1.0, angle.claim.value)
+            claim = f"The strut angle is declared as {with_unit(declared_value, 'deg', 3)},"
+            implied = f"but {shown} were worked with {with_unit(used, 'deg', 3)}."
+            gravity, recomputed = rule.gravity, used
+        unit = "deg"
+        words = words_of(subject, claim=claim, implied=implied)
+        drafts[where] = draft_of(
+            rule, subject, quantity=quantity, unit=unit, key=angle.side, says=words.fill(rule.says), where=where,
+            declared=declared_value, recomputed=recomputed, gravity=gravity, direction=EITHER_SIDE,
+            shows_in=angle.shows_in, implied_cot=angle.used,
+            declared_text=angle.claim.source.number.text if angle.claim else "",
+        )  # fmt: skip
+    return ended(rule, subject, FAIL), list(drafts.values())

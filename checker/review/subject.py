@@ -1,0 +1,74 @@
+"""What a rule is given to look at, and the two things it hands back: a check and drafts of findings."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+from checker.review.catalogue import Catalogue, Rule
+from checker.review.causes import Causes, find_causes
+from checker.review.claims import Claim
+from checker.review.compare import Comparison, compare_all
+from checker.review.drafts import UNSAFE_SIDE, Check, Draft, Words
+from checker.review.evaluated import Evaluated
+from checker.review.window import Window, window_of
+from checker.declared.model import Place
+from checker.geometry.facts import Fact
+
+
+@dataclass(frozen=True)
+class Subject:
+    """What the rules look at: a case, its comparisons and causes, its window and the member's facts."""
+
+    case: Evaluated
+    catalogue: Catalogue
+    compared: Mapping[str, Comparison]
+    causes: Causes
+    window: Window
+    facts: Mapping[str, Fact]
+    places: Mapping[str, Place]
+
+    @property
+    def claims(self) -> Mapping[str, Claim]:
+        return self.case.claims
+
+
+Outcome = tuple[Check, list[Draft]]
+
+
+def subject_of(
+    case: Evaluated, catalogue: Catalogue, facts: Mapping[str, Fact], places: Mapping[str, Place]
+) -> Subject:
+    """Compare, find causes, open the window: all that rules look at."""
+    compared = compare_all(case, catalogue)
+    causes = find_causes(case, compared, _broken_choices(case))
+    return Subject(case, catalogue, compared, causes, window_of(case.scratch), facts, places)
+
+
+def ended(rule: Rule, subject: Subject, status: str, why: str = "", margin: float | None = None) -> Check:
+    case = None if rule.scope == "member" else subject.case.case.name
+    return Check(rule.id, case, status, why, margin if margin is None or math.isfinite(margin) else None)
+
+
+def draft_of(rule: Rule, subject: Subject, **fields: object) -> Draft:
+    case = None if rule.scope == "member" else subject.case.case.name
+    defaults: dict[str, object] = {
+        "rule": rule.id, "gravity": rule.gravity, "direction": UNSAFE_SIDE, "case": case, "quantity": "",
+        "unit": "", "clause": rule.clause, "says": "", "todo": rule.todo, "cases": (subject.case.case.name,),
+    }  # fmt: skip
+    return Draft(**{**defaults, **fields})  # type: ignore[arg-type]
+
+
+def words_of(subject: Subject, **given: str) -> Words:
+    return Words(subject.case.sheet, subject.case.scratch, given)
+
+
+def _broken_choices(case: Evaluated) -> tuple[str, ...]:
+    """Choices whose claim was cut back to a limit, so that what the designer carried on hangs on them."""
+    return tuple(
+        symbol
+        for symbol in ("z", "cot_theta_shear", "cot_theta_torsion")
+        if (claim := case.claims.get(symbol)) is not None
+        and abs(float(case.scratch[symbol]) - claim.value) > claim.half_step + 1e-6 * claim.value
+    )
