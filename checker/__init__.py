@@ -1,10 +1,10 @@
 """Samestrut: an independent audit of declared concrete beams in shear and torsion to Eurocode 2.
 
-    from checker import audit, load
+from checker import audit, load
 
-    report = audit("beam.yaml")      # AuditReport
-    report.outcome                   # "accept", "accept with remarks", "return", "incomplete"
-    print(report.text())
+report = audit("beam.yaml")      # AuditReport
+report.outcome                   # "accept", "accept with remarks", "return", "incomplete"
+print(report.text())
 """
 
 from __future__ import annotations

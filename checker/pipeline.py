@@ -6,24 +6,27 @@
 
 from __future__ import annotations
 
+import os
 from collections.abc import Iterable, Iterator
-from dataclasses import dataclass
+from contextlib import suppress
 from pathlib import Path
+from typing import NamedTuple
 
 from checker import __version__
-from checker.review.catalogue import Catalogue, load_catalogue, rules_digest
-from checker.review.claims import case_row, claims_of, member_row
-from checker.review.drafts import Check, Draft
-from checker.review.engine import Engine, annex_path, engine, shape_layers
-from checker.review.evaluated import evaluate
-from checker.review.findings import CaseResult, MemberResult, number_findings, outcome_of, worst
-from checker.review.judge import judge
-from checker.review.subject import Subject, subject_of
 from checker.declared.build import load_file
 from checker.declared.model import Design
 from checker.errors import Fault, InputFaults, RuleFaults
 from checker.geometry.measure import Measured, measure
 from checker.report.audit_report import AuditReport, Input, Stamp
+from checker.review.catalogue import Catalogue, load_catalogue
+from checker.review.claims import case_row, claims_of, member_row
+from checker.review.drafts import Check, Draft
+from checker.review.engine import Engine, annex_path, engine, shape_layers
+from checker.review.evaluated import evaluate
+from checker.review.findings import INCOMPLETE, CaseResult, MemberResult, number_findings, outcome_of, worst
+from checker.review.judge import judge
+from checker.review.subject import Subject, subject_of
+from checker.sheet.rulefile import rules_digest
 
 SUFFIXES = (".yaml", ".yml", ".json")
 STANDARD = "EN 1992-1-1:2004"
@@ -32,8 +35,7 @@ NOT_SHOWN = ("section", "flag")
 Item = str | Path | Design
 
 
-@dataclass(frozen=True)
-class Options:
+class Options(NamedTuple):
     """What a run may change: an annex for all files, an office's file of rules or layers."""
 
     annex: str | None = None
@@ -46,7 +48,15 @@ def load(path: str | Path) -> Design:
     Raises:
         InputFaults: every fault of the file, each with line and column.
     """
-    return load_file(Path(path), Path(path).as_posix())
+    return load_file(Path(path), _named(Path(path)))
+
+
+def _named(path: Path) -> str:
+    """A file's name in messages and reports: relative to where the run was started."""
+    if path.is_absolute():
+        with suppress(ValueError):  # another drive
+            path = Path(os.path.relpath(path))
+    return path.as_posix()
 
 
 def audit(
@@ -83,7 +93,7 @@ def audit(
             faults += error.faults
             continue
         inputs.append(Input(design.file, design.sha256))
-    outcome = worst(member.outcome for member in members)
+    outcome = worst([*(member.outcome for member in members), *([INCOMPLETE] if faults else [])])
     return AuditReport(_stamp(annexes, options), tuple(inputs), outcome, tuple(members), tuple(faults))
 
 
@@ -109,12 +119,16 @@ def audit_member(
     findings = number_findings(design.member, drafts, start)
     outcome = outcome_of((finding.draft.gravity for finding in findings), checks.values())
     revision = design.submission.get("revision", "")
-    return MemberResult(design.member, design.file, revision, outcome, findings, tuple(checks.values()), tuple(cases))
+    return MemberResult(
+        design.member, design.file, revision, outcome, findings, tuple(checks.values()), tuple(cases)
+    )
 
 
 def engine_for(design: Design, measured: Measured, options: Options) -> Engine:
     """The compiled sheet that a design's standard, annex, shape and links call for."""
-    aslant = abs(measured.inputs["S_sin"] - measured.inputs["A_sw_s_all"]) > 1e-9 * measured.inputs["A_sw_s_all"]
+    aslant = (
+        abs(measured.inputs["S_sin"] - measured.inputs["A_sw_s_all"]) > 1e-9 * measured.inputs["A_sw_s_all"]
+    )
     layers = shape_layers(measured.shape, aslant=aslant or measured.inputs["S_cos"] > 1e-9)
     return engine(design.standard, _annex_of(design, options), layers, options.rules)
 
@@ -161,10 +175,12 @@ def _expanded(items: Iterable[Item], faults: list[Fault]) -> Iterator[Item]:
         if isinstance(item, Design) or not Path(item).is_dir():
             yield item
             continue
-        files = sorted(path for path in Path(item).rglob("*") if path.suffix.lower() in SUFFIXES and path.is_file())
+        files = sorted(
+            path for path in Path(item).rglob("*") if path.suffix.lower() in SUFFIXES and path.is_file()
+        )
         if not files:
             said = f"no declared designs in this folder; expected files that end in {', '.join(SUFFIXES)}"
-            faults.append(Fault(Path(item).as_posix(), 1, 1, said))
+            faults.append(Fault(_named(Path(item)), 1, 1, said))
         yield from files
 
 

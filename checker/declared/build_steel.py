@@ -64,7 +64,7 @@ def build_bars(groups: list[Values], corners: int | None, faults: Faults) -> lis
 
 def build_cases(cases: list[Values], shared: Values | None, faults: Faults) -> list[Case]:
     """The load cases that are sound, the member's declared values merged in."""
-    member = _declared(shared, faults)
+    member = {s: value._replace(member_wide=True) for s, value in _declared(shared, faults).items()}
     built: list[Case] = []
     first: dict[str, Place] = {}
     for values in cases:

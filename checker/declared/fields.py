@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, field
-from typing import Literal
+from typing import Literal, NamedTuple
 
 Kind = Literal[
     "number",  # a number, its unit optional
@@ -26,8 +26,7 @@ Kind = Literal[
 ]
 
 
-@dataclass(frozen=True, slots=True)
-class Field:
+class Field(NamedTuple):
     """One key: what it holds, in which unit, within which limits.
 
     - `least`, `most` (inclusive) and `above`, `below` (exclusive) bound a number, or the length of a list.
@@ -45,20 +44,19 @@ class Field:
     above: float | None = None
     below: float | None = None
     choices: tuple[str, ...] = ()
-    refused: Mapping[str, str] = field(default_factory=dict)
+    refused: Mapping[str, str] = {}
     record: str = ""
     unless: tuple[str, ...] = ()
 
 
-@dataclass(frozen=True, slots=True)
-class Form:
+class Form(NamedTuple):
     """One of several ways to say the same thing: the keys it needs, and others that only go with it."""
 
     needs: tuple[str, ...]
     allows: tuple[str, ...] = ()
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True)
 class Record:
     """A map of the file: its fields, and the forms of which one must be used (none: no such choice)."""
 

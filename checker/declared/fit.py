@@ -89,19 +89,22 @@ def perimeter_inset(points: tuple[Point, ...], inset: float) -> float:
     return outer - 2 * inset * sum(math.tan(angle / 2) for angle in turnings(points))
 
 
-def flat_edge(points: tuple[Point, ...], top: bool, inset: float) -> float | None:
-    """Length in mm of the longest level edge at the bottom (or top), moved in with its neighbours by `inset`.
+def flat_edge(points: tuple[Point, ...], face: str, inset: float) -> float | None:
+    """Length in mm of the longest straight edge along a face, moved in with its neighbours by `inset`.
 
-    None when the outline has no level edge there; negative when the neighbours meet before.
+    `face` is bottom, top, left or right. None when the outline has no level (or upright) edge at its extreme
+    there; negative when the neighbours meet before.
     """
     corners = without_straight_points(points)
     angles = turnings(corners)
-    level = max(y for _, y in corners) if top else min(y for _, y in corners)
+    axis = 1 if face in ("bottom", "top") else 0
+    ends = [point[axis] for point in corners]
+    extreme = min(ends) if face in ("bottom", "left") else max(ends)
     lengths = [
         math.dist(start, end)
         - inset * (math.tan(angles[i] / 2) + math.tan(angles[(i + 1) % len(corners)] / 2))
         for i, (start, end) in enumerate(edges(corners))
-        if abs(start[1] - level) <= _FLAT and abs(end[1] - level) <= _FLAT
+        if abs(start[axis] - extreme) <= _FLAT and abs(end[axis] - extreme) <= _FLAT
     ]
     return max(lengths, default=None)
 

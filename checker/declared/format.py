@@ -164,7 +164,7 @@ _BARS = Record(
 def _declared_field(symbol: str, unit: str) -> Field:
     doc = MEANINGS[symbol][0].upper() + MEANINGS[symbol][1:] + "."
     if symbol in LINK_AREAS:
-        return Field(symbol, "area", doc, unit=unit, least=0, record="link area")
+        return Field(symbol, "area", doc, unit=unit, least=0, record="link_area")
     if symbol in STRUT_ANGLES:
         return Field(symbol, "number", doc, unit=unit, above=0, below=90)
     if symbol.startswith("cot_"):
@@ -182,7 +182,7 @@ _DECLARED = Record(
 )
 
 _LINK_AREA = Record(
-    "link area",
+    "link_area",
     "A link area that says which legs it counts.",
     (
         Field("value", "number", "The area per length.", required=True, unit="mm2/mm", least=0),

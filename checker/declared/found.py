@@ -77,7 +77,3 @@ class Values:
     def spot(self, *keys: str) -> Place:
         """The place of the first of these keys that is written, else of the record."""
         return next((self._places[key] for key in keys if key in self._places), self.place)
-
-    def keys(self) -> tuple[str, ...]:
-        """The keys with a sound value, in the order of the file."""
-        return tuple(self._items)

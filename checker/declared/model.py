@@ -9,7 +9,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 from typing import NamedTuple
 
 
@@ -23,8 +23,7 @@ class Place(NamedTuple):
 NOWHERE = Place(1, 1)  # the place of what the file doesn't spell out, such as a default
 
 
-@dataclass(frozen=True, slots=True)
-class Number:
+class Number(NamedTuple):
     """A number as written and as understood.
 
     - `value` is in inside units, `text` is as written without its unit ("0.42 mm2/mm" gives "0.42").
@@ -45,8 +44,7 @@ class Number:
         return self.step / 2
 
 
-@dataclass(frozen=True, slots=True)
-class Section:
+class Section(NamedTuple):
     """The outline of the cross-section.
 
     - `shape` is "rectangle", "box", "circle" or "polygon".
@@ -60,8 +58,7 @@ class Section:
     place: Place = NOWHERE
 
 
-@dataclass(frozen=True, slots=True)
-class Materials:
+class Materials(NamedTuple):
     """Characteristic strengths in MPa and, where the file states them, the partial factors."""
 
     f_ck: Number
@@ -72,8 +69,7 @@ class Materials:
     place: Place = NOWHERE
 
 
-@dataclass(frozen=True, slots=True)
-class LinkSet:
+class LinkSet(NamedTuple):
     """One set of links: `where` is "perimeter" or "inner"; `angle` to the member axis in rad.
 
     - `ends` is hooks_135, hooks_90, lapped, welded or open; None where it is unsaid.
@@ -110,18 +106,20 @@ class BarGroup:
     place: Place = NOWHERE
 
 
-@dataclass(frozen=True, slots=True)
-class DeclaredValue:
-    """One of the designer's own numbers; `counts` is "one leg", "all legs" or None, for link areas only."""
+class DeclaredValue(NamedTuple):
+    """One of the designer's own numbers; `counts` is "one leg", "all legs" or None, for link areas only.
+
+    `member_wide` when it stands under the member's `declared`, not under a case's.
+    """
 
     symbol: str
     number: Number
     counts: str | None = None
     place: Place = NOWHERE
+    member_wide: bool = False
 
 
-@dataclass(frozen=True, slots=True)
-class Case:
+class Case(NamedTuple):
     """One load case with the numbers declared for it.
 
     - V_Ed and N_Ed in N (compression positive), T_Ed, M_Ed and M_Ed_max in N*mm (sagging positive).
@@ -135,13 +133,12 @@ class Case:
     M_Ed: Number
     N_Ed: Number
     M_Ed_max: Number | None = None
-    declared: Mapping[str, DeclaredValue] = field(default_factory=dict)
+    declared: Mapping[str, DeclaredValue] = {}
     verdict: tuple[str, Place] | None = None
     place: Place = NOWHERE
 
 
-@dataclass(frozen=True, slots=True)
-class Design:
+class Design(NamedTuple):
     """A whole declared file; `places` has the place of each top-level key that stands in it."""
 
     file: str
@@ -158,4 +155,4 @@ class Design:
     links: tuple[LinkSet, ...]
     bars: tuple[BarGroup, ...]
     cases: tuple[Case, ...]
-    places: Mapping[str, Place] = field(default_factory=dict)
+    places: Mapping[str, Place] = {}

@@ -115,7 +115,9 @@ def _read_yaml(text: str, tree: Tree) -> None:
     except yaml.MarkedYAMLError as error:
         mark = error.problem_mark or error.context_mark
         line, column = (mark.line + 1, mark.column + 1) if mark else (1, 1)
-        tree.stop(line, column, f"not readable as YAML: {_problem(error)}")
+        tree.stop(
+            line, column, f"not readable as YAML: {_problem(error, text.splitlines()[line - 1 : line])}"
+        )
     except yaml.YAMLError as error:
         tree.stop(1, 1, f"not readable as YAML: {' '.join(str(error).split())}")
 
@@ -125,8 +127,8 @@ def _events(text: str) -> Iterator[Any]:
     return yaml.parse(text, Loader=_LOADER)
 
 
-def _problem(error: yaml.MarkedYAMLError) -> str:
+def _problem(error: yaml.MarkedYAMLError, line: list[str]) -> str:
     problem = " ".join(part for part in (error.context, error.problem) if part)
-    if "tab" in problem or "'\\t'" in problem:
+    if any(part.lstrip(" ").startswith("\t") for part in line):
         return f"{problem} (indent with spaces, not with tabs)"
     return problem

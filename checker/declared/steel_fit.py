@@ -20,6 +20,7 @@ from checker.declared.fit import (
 )
 from checker.declared.model import BarGroup, LinkSet, Number, Place, Section
 
+FLAT_FACES = ("bottom", "top", "left", "right")
 _SLACK = 1e-6  # mm
 Found = Iterator[tuple[Place, str]]
 
@@ -78,12 +79,17 @@ def bar_faults(
     phi_link = max((item.diameter.value for item in links if item.where == "perimeter"), default=0.0)
     inset = cover.value + phi_link
     clear = 25.0 if aggregate is None else max(aggregate.value + 5, 20.0)
+    layers = {(group.face, group.layer) for group, _ in bars}
     stands = True
     for group, spot in bars:
         if group.at:
             reason = next(_misplaced(section, group), "")
         else:
             reason = _beyond(section, group, inset, clear) or _crowded_round(section, group, inset)
+            if not reason and group.layer > 1 and (group.face, group.layer - 1) not in layers:
+                reason = (
+                    f"layer {group.layer} needs a layer {group.layer - 1} on the same face ({group.face})"
+                )
         if reason:
             stands = False
             yield spot, f"{group.mark}: {reason}"
@@ -98,9 +104,10 @@ def _beyond(section: Section, group: BarGroup, inset: float, clear: float) -> st
     phi = group.diameter.value
     if section.shape == "circle" and group.face not in ("round", "corners"):
         return f"a circle has no flat {group.face}; use face: round, or exact places (at)"
-    polygon_level = section.shape == "polygon" and group.face in ("bottom", "top")
-    if polygon_level and flat_edge(section.points, group.face == "top", 0.0) is None:
-        return f"this outline has no flat {group.face}; use face: round, or exact places (at)"
+    flat = group.face in FLAT_FACES
+    if section.shape == "polygon" and flat and flat_edge(section.points, group.face, 0.0) is None:
+        side = " side" if group.face in ("left", "right") else ""
+        return f"this outline has no flat {group.face}{side}; use face: round, or exact places (at)"
     depths = {"bottom": height, "top": height, "left": width, "right": width}
     depth = depths.get(group.face, min(width, height))
     first = inset + phi / 2
@@ -140,7 +147,7 @@ def _crowded_faces(section: Section, bars: list[tuple[BarGroup, Place]], inset: 
     """All bars of a face and layer, side by side, against the room between its corners."""
     rows: dict[tuple[str, int], list[tuple[BarGroup, Place]]] = {}
     for group, spot in bars:
-        if not group.at and group.face in ("bottom", "top", "left", "right"):
+        if not group.at and group.face in FLAT_FACES:
             rows.setdefault((group.face, group.layer), []).append((group, spot))
     for (face, _), row in rows.items():
         largest = max(group.diameter.value for group, _ in row)
@@ -161,7 +168,7 @@ def _room(section: Section, face: str, inset: float, phi: float) -> float | None
         return (width if face in ("bottom", "top") else height) - 2 * inset
     if face in ("left", "right"):
         return None
-    centres = flat_edge(section.points, face == "top", inset + phi / 2)
+    centres = flat_edge(section.points, face, inset + phi / 2)
     return None if centres is None else centres + phi
 
 

@@ -12,9 +12,8 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
 from math import cos, hypot, pi, sin
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, NamedTuple
 
 from checker.errors import Fault, InputFaults
 from checker.geometry import polygons
@@ -28,8 +27,7 @@ SIDES = ("left", "right")
 FLAT = ("bottom", "top", *SIDES)
 
 
-@dataclass(frozen=True, slots=True)
-class Bar:
+class Bar(NamedTuple):
     """One bar: centre (mm from the lower left of the bounding box), diameter in mm, area in mm2."""
 
     x: float
@@ -43,8 +41,7 @@ class Bar:
     layer: int = 1
 
 
-@dataclass(frozen=True, slots=True)
-class Cage:
+class Cage(NamedTuple):
     """What the links and the cover fix for every bar, mm."""
 
     cover: float

@@ -9,9 +9,8 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable
-from dataclasses import dataclass
 from math import degrees, pi, radians
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, NamedTuple
 
 from checker.geometry.bars import Bar
 from checker.geometry.outline import Outline
@@ -26,8 +25,7 @@ TAILS = {"hooks_90": (10, 70.0), "hooks_135": (5, 50.0)}
 """Least straight length after the bend: so many link diameters, and so many mm (8.5)."""
 
 
-@dataclass(frozen=True, slots=True)
-class Fact:
+class Fact(NamedTuple):
     """One fact: whether it holds, what was found, and where in the file it stands."""
 
     ok: bool | None

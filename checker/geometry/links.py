@@ -100,6 +100,8 @@ def eta_leg(outline: Outline, cage: Cage, y0: float, y1: float) -> float:
     if outline.circle_diameter is not None:
         centre, r = outline.height / 2, outline.height / 2 - inwards
         t0, t1 = max((y0 - centre) / r, -1.0), min((y1 - centre) / r, 1.0)
+        if t0 >= t1:  # no link between the chords: bars placed outside it
+            return 0.0
         return (_under_arc(t1) - _under_arc(t0)) / (t1 - t0)
     if outline.shape in ("rectangle", "box"):
         return 1.0

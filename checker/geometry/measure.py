@@ -8,8 +8,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, NamedTuple
 
 from checker.geometry import links, steel
 from checker.geometry.bars import Bar, Cage, cage_of, place_bars
@@ -24,8 +23,7 @@ LEVER = 0.9
 """z/d where nothing better is known (EN 1992-1-1, 6.2.3(1))."""
 
 
-@dataclass(frozen=True, slots=True)
-class Measured:
+class Measured(NamedTuple):
     """What was measured on one design."""
 
     inputs: Mapping[str, float]

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
-from typing import TYPE_CHECKING, Any, TypeAlias
+from typing import TYPE_CHECKING, Any, NamedTuple, TypeAlias
 
 from checker.geometry.polygons import Strip
 
@@ -19,8 +19,7 @@ if TYPE_CHECKING:
 Floats: TypeAlias = "NDArray[np.float64]"
 
 
-@dataclass(frozen=True, slots=True)
-class Profile:
+class Profile(NamedTuple):
     """One section: strips in mm by depth from either face, bars as (height from the bottom mm, area mm2)."""
 
     strips_sagging: tuple[Strip, ...]

@@ -4,26 +4,25 @@ from __future__ import annotations
 
 from collections import Counter
 from dataclasses import dataclass
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, NamedTuple
 
-from checker.review.catalogue import GRAVITIES
-from checker.review.findings import EXIT_CODES, Finding, MemberResult
 from checker.errors import Fault
+from checker.review.catalogue import GRAVITIES
+from checker.review.drafts import CRASHED
+from checker.review.findings import EXIT_CODES, Finding, MemberResult
 
 if TYPE_CHECKING:
     import pandas as pd
 
 
-@dataclass(frozen=True, slots=True)
-class Input:
+class Input(NamedTuple):
     """A file that was audited, with the SHA-256 of its bytes."""
 
     file: str
     sha256: str
 
 
-@dataclass(frozen=True, slots=True)
-class Stamp:
+class Stamp(NamedTuple):
     """What a report rests on: tool and version, standard, annex, digest of every rule file."""
 
     tool: str
@@ -65,8 +64,9 @@ class AuditReport:
     @property
     def exit_code(self) -> int:
         """0 accept, 1 return, 2 a file that isn't a valid declared design, 3 a fault of the tool."""
-        code = EXIT_CODES[self.outcome]
-        return code if code == 3 or not self.faults else 2
+        if any(check.status == CRASHED for member in self.members for check in member.checks):
+            return 3
+        return 2 if self.faults else EXIT_CODES[self.outcome]
 
     def document(self) -> dict[str, Any]:
         """The report as plain data, as `schemas/report.schema.json` describes it."""

@@ -68,7 +68,9 @@ def _finding(finding: Finding, file: str) -> dict[str, Any]:
         "cases": list(draft.cases),
         "quantity": draft.quantity or None,
         "unit": draft.unit or None,
-        "declared": draft.declared_text if draft.quantity == "verdict" else _shown(draft.declared, draft.unit),
+        "declared": draft.declared_text
+        if draft.quantity == "verdict"
+        else _shown(draft.declared, draft.unit),
         "recomputed": _shown(draft.recomputed, draft.unit),
         "limit": _shown(draft.limit, draft.unit),
         "tolerance": _shown(draft.tolerance, draft.unit),

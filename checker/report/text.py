@@ -31,7 +31,7 @@ OUTCOME_WORDS = {
     "accept": "ACCEPT — nothing was found",
     "accept with remarks": "ACCEPT WITH REMARKS — nothing that needs an answer",
     "return": "RETURN — findings need an answer",
-    "incomplete": "INCOMPLETE — a fault of this tool; the report can't be relied on",
+    "incomplete": "INCOMPLETE — not everything could be checked; don't rely on what is missing here",
 }
 
 
@@ -61,7 +61,10 @@ def _head(report: AuditReport) -> str:
 
 def _member(member: MemberResult, *, workings: bool) -> str:
     title = f"Member {member.member}" + (f", revision {member.revision}" if member.revision else "")
-    lines = [f"{title} ({member.file}): {member.outcome}", "─" * min(WIDTH, len(title) + len(member.file) + 30)]
+    lines = [
+        f"{title} ({member.file}): {member.outcome}",
+        "─" * min(WIDTH, len(title) + len(member.file) + 30),
+    ]
     lines.append(_cases(member.cases))
     blocks = ["\n".join(lines)]
     if member.findings:
@@ -95,8 +98,8 @@ def _overview(member: MemberResult) -> str:
         [
             finding.number,
             finding.draft.gravity,
-            finding.draft.case or "all",
-            paper(finding.draft.quantity) if finding.draft.quantity else finding.draft.rule,
+            finding.draft.case or "member",
+            _about(finding),
             _value(finding, "declared"),
             _value(finding, "recomputed"),
             _value(finding, "limit"),
@@ -104,8 +107,15 @@ def _overview(member: MemberResult) -> str:
         ]
         for finding in member.findings
     ]
-    heads = ["No.", "gravity", "case", "about", "declared", "recomputed", "limit", "clause"]
+    heads = ["No.", "gravity", "case", "about", "declared", "recomputed\nor provided", "limit", "clause"]
     return str(tabulate(rows, heads, tablefmt="plain", disable_numparse=True, maxcolwidths=[None] * 7 + [26]))
+
+
+def _about(finding: Finding) -> str:
+    """The declared symbol, else the rule: what a reader can find again in the file or in the catalogue."""
+    draft = finding.draft
+    stands = draft.declared is not None or draft.declared_text
+    return paper(draft.quantity) if draft.quantity and stands else draft.rule
 
 
 def _value(finding: Finding, name: str) -> str:
@@ -119,7 +129,8 @@ def _value(finding: Finding, name: str) -> str:
 def _finding(finding: Finding, file: str, *, workings: bool) -> str:
     draft = finding.draft
     place = ", ".join(f"{file}:{spot.line}:{spot.column}" for spot in draft.where)
-    case = f"case {draft.case}" if draft.case else "cases " + ", ".join(draft.cases)
+    names = (draft.case,) if draft.case else draft.cases
+    case = f"case{'s' if len(names) > 1 else ''} {', '.join(names)}"
     hangs = f", carried from No. {finding.carried_from}" if finding.carried_from else ""
     head = f"No. {finding.number}  {draft.gravity.upper()} ({draft.direction}{hangs})  {draft.rule} [{finding.id}]"
     body = [draft.says, f"To do: {draft.todo}"]
@@ -132,12 +143,17 @@ def _finding(finding: Finding, file: str, *, workings: bool) -> str:
 
 def _wrapped(text: str) -> str:
     return textwrap.fill(
-        text, WIDTH, initial_indent="    ", subsequent_indent="    ", break_long_words=False, break_on_hyphens=False
+        text,
+        WIDTH,
+        initial_indent="    ",
+        subsequent_indent="    ",
+        break_long_words=False,
+        break_on_hyphens=False,
     )
 
 
 def _checks(member: MemberResult) -> str:
-    counts = {status: 0 for status in (PASS, FAIL, NOT_APPLICABLE, NOT_CHECKED, CRASHED)}
+    counts = dict.fromkeys((PASS, FAIL, NOT_APPLICABLE, NOT_CHECKED, CRASHED), 0)
     for check in member.checks:
         counts[check.status] += 1
     lines = ["Rules: " + ", ".join(f"{count} {status}" for status, count in counts.items() if count) + "."]
@@ -158,6 +174,10 @@ def _checks(member: MemberResult) -> str:
 def _foot(report: AuditReport) -> str:
     stamp = report.stamp
     lines = ["Cautions", _wrapped(CAUTIONS), "Stamp"]
-    lines.append(_wrapped(f"{stamp.tool} {stamp.version}; {stamp.standard}; annex {stamp.annex}; rules {stamp.digest[:16]}"))
+    lines.append(
+        _wrapped(
+            f"{stamp.tool} {stamp.version}; {stamp.standard}; annex {stamp.annex}; rules {stamp.digest[:16]}"
+        )
+    )
     lines += [_wrapped(f"{item.file}: sha256 {item.sha256[:16]}") for item in report.inputs]
     return "\n".join(lines)

@@ -10,7 +10,6 @@ from __future__ import annotations
 
 import math
 from collections.abc import Mapping
-from dataclasses import replace
 from typing import Any
 
 from checker.review.claims import LEG_BASIS, Claim
@@ -32,8 +31,8 @@ def settle_bases(claims: Mapping[str, Claim], scratch: Mapping[str, Any]) -> dic
         if _fits(claim.value, claim.half_step, target) or not _fits(claim.other, other_step, target):
             continue
         if claim.source.counts is not None or (total_stands and symbol in ("A_sw_s_shear", "A_sw_s_torsion")):
-            settled[symbol] = replace(
-                claim, value=claim.other, half_step=other_step, other=claim.value, swapped=True
+            settled[symbol] = claim._replace(
+                value=claim.other, half_step=other_step, other=claim.value, swapped=True
             )
     return settled
 

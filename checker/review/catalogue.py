@@ -6,11 +6,10 @@
 
 from __future__ import annotations
 
-import hashlib
 from collections.abc import Mapping as MappingABC
-from dataclasses import dataclass, fields, replace
 from functools import lru_cache
 from pathlib import Path
+from typing import NamedTuple
 
 from checker import shipped
 from checker.declared.tree import Entry, Mapping, Node, Scalar, Sequence
@@ -24,8 +23,7 @@ BY_WINDOW = "by-window"
 DEFAULT_TOLERANCE = 0.01
 
 
-@dataclass(frozen=True, slots=True)
-class Rule:
+class Rule(NamedTuple):
     """One rule.
 
     Attributes:
@@ -69,8 +67,7 @@ class Rule:
         return tuple(s for s in (*single, *self.or_, *self.quantities, *self.provided) if s)
 
 
-@dataclass(frozen=True, slots=True)
-class Catalogue:
+class Catalogue(NamedTuple):
     """All rules in order, and the digest of every rule file that took part."""
 
     rules: MappingABC[str, Rule]
@@ -84,7 +81,7 @@ class Catalogue:
         return None
 
 
-_KEYS = {field.name.rstrip("_") for field in fields(Rule)} - {"id"}
+_KEYS = {name.rstrip("_") for name in Rule._fields} - {"id"}
 _LISTS = ("or", "quantities", "provided", "declared")
 
 
@@ -104,18 +101,6 @@ def load_catalogue(extra: Path | None = None, shown_as: str = "") -> Catalogue:
     if faults:
         raise RuleFaults(faults)
     return Catalogue(rules, "")
-
-
-def rules_digest(extra: tuple[Path, ...] = ()) -> str:
-    """SHA-256 over every shipped rule file, in order, and the extra ones; it names the rule set in a report."""
-    base = shipped.folder("rules")
-    digest = hashlib.sha256()
-    for path in [*sorted(base.rglob("*.yaml")), *extra]:
-        name = path.relative_to(base).as_posix() if path.is_relative_to(base) else f"extra/{path.name}"
-        content = path.read_bytes().replace(b"\r\n", b"\n")
-        digest.update(f"{name}\n{len(content)}\n".encode())
-        digest.update(content)
-    return digest.hexdigest()
 
 
 def check_against(catalogue: Catalogue, sheet: Sheet, file: str) -> None:
@@ -153,11 +138,13 @@ def _read_rules(path: Path, file: str, rules: dict[str, Rule], faults: list[Faul
             continue
         found = _rule_fields(id_, entry.node, file, faults)
         if id_ in rules:
-            rules[id_] = replace(rules[id_], **found)  # type: ignore[arg-type]
+            rules[id_] = rules[id_]._replace(**found)  # type: ignore[arg-type]
             continue
         merged = {**defaults, **found}
         if "kind" not in merged:
-            faults.append(Fault(file, entry.key.line, entry.key.column, f"{id_}: needs a kind ({', '.join(KINDS)})"))
+            faults.append(
+                Fault(file, entry.key.line, entry.key.column, f"{id_}: needs a kind ({', '.join(KINDS)})")
+            )
             continue
         rules[id_] = Rule(id_, **merged)  # type: ignore[arg-type]
 

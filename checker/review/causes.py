@@ -9,7 +9,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Mapping
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from checker.review.claims import Claim
 from checker.review.compare import Comparison
@@ -21,11 +21,12 @@ SIDES: dict[str, tuple[str, ...]] = {
 }
 """The declared values that each angle can be solved back from (the sheet's `cot_of_X`)."""
 
+PEAKED = ("V_Rd_max", "T_Rd_max")  # largest at 45°: above that no angle gives them
+
 AGREE = 0.01  # two implied angles count as one when their bands, this much wider, overlap
 
 
-@dataclass(frozen=True, slots=True)
-class Band:
+class Band(NamedTuple):
     """cot θ implied by one declared value, with what its rounding leaves open."""
 
     symbol: str
@@ -37,8 +38,7 @@ class Band:
         return self.low * (1 - AGREE) <= cot <= self.high * (1 + AGREE)
 
 
-@dataclass(frozen=True, slots=True)
-class AngleUsed:
+class AngleUsed(NamedTuple):
     """An angle that was used beside the one claimed, or beside the other side's.
 
     Attributes:
@@ -56,22 +56,23 @@ class AngleUsed:
     other: float = math.nan
 
 
-@dataclass(frozen=True, slots=True)
-class Causes:
+class Causes(NamedTuple):
     """What was found out about the declared values of one case.
 
     Attributes:
         roots: symbols that are wrong on their own account, in the order of the sheet.
-        carried: symbol -> the root it hangs on.
+        carried: symbol -> the roots it hangs on, in the order of the sheet.
         angles: strut angles used beside the claimed ones.
     """
 
     roots: tuple[str, ...]
-    carried: Mapping[str, str]
+    carried: Mapping[str, tuple[str, ...]]
     angles: tuple[AngleUsed, ...]
 
 
-def find_causes(case: Evaluated, compared: Mapping[str, Comparison], broken_choices: tuple[str, ...]) -> Causes:
+def find_causes(
+    case: Evaluated, compared: Mapping[str, Comparison], broken_choices: tuple[str, ...]
+) -> Causes:
     """Sort the declared values that disagree into roots and carried ones.
 
     Args:
@@ -80,36 +81,37 @@ def find_causes(case: Evaluated, compared: Mapping[str, Comparison], broken_choi
         broken_choices: choices (z, cot θ) whose claim was not admissible, so that what follows hangs on them.
     """
     angles = angles_used(case, compared)
-    hangs_on: dict[str, str] = {choice: choice for choice in broken_choices}
+    hangs_on: dict[str, tuple[str, ...]] = {choice: (choice,) for choice in broken_choices}
     roots: list[str] = []
-    carried: dict[str, str] = {}
+    carried: dict[str, tuple[str, ...]] = {}
     for angle in angles:
         if angle.claim is None:
             continue
-        hangs_on.setdefault(angle.side, angle.side)
+        hangs_on.setdefault(angle.side, (angle.side,))
         for symbol in angle.shows_in:
-            hangs_on[symbol] = carried[symbol] = angle.side
+            hangs_on[symbol] = carried[symbol] = (angle.side,)
     for symbol, comparison in compared.items():
         if comparison.agrees or symbol in carried:
             continue
-        wrong = [name for name in case.ancestors(symbol) if name in hangs_on]
+        above = [root for name in case.ancestors(symbol) for root in hangs_on.get(name, ())]
+        wrong = tuple(dict.fromkeys(above))
         if not comparison.follows:
             roots.append(symbol)
-            hangs_on[symbol] = symbol
+            hangs_on[symbol] = (symbol,)
         elif wrong:
-            hangs_on[symbol] = carried[symbol] = hangs_on[wrong[0]]
+            hangs_on[symbol] = carried[symbol] = wrong
     return Causes(tuple(roots), carried, angles)
 
 
 def angles_used(case: Evaluated, compared: Mapping[str, Comparison]) -> tuple[AngleUsed, ...]:
     """The strut angles that the declared values betray, where they part from the claim or from each other."""
     found: list[AngleUsed] = []
-    for side in SIDES:
+    for side, symbols in SIDES.items():
         claim = case.claims.get(side)
-        failing = [s for s in SIDES[side] if s in compared and not compared[s].agrees]
+        failing = [s for s in symbols if s in compared and not compared[s].agrees]
         if claim is None or len(failing) < 2:
             continue
-        bands = bands_of(case, SIDES[side])
+        bands = bands_of(case, symbols)
         used = _common(bands, failing)
         if used is not None and not _is(case.scratch[side], used):
             found.append(AngleUsed(side, claim, used, tuple(failing)))
@@ -127,17 +129,18 @@ def bands_of(case: Evaluated, symbols: tuple[str, ...]) -> dict[str, Band]:
             continue
         name = f"cot_of_{symbol}"
         reach = claim.half_step + AGREE * abs(claim.value)
-        cots = [_solved(case.follow[name])]
+        peaked = symbol in PEAKED
+        cots = [_solved(case.follow[name], peaked)]
         for value in (claim.value - reach, claim.value + reach):
-            cots.append(_solved(case.shifted({symbol: value})[name]))
+            cots.append(_solved(case.shifted({symbol: value})[name], peaked))
         if all(math.isfinite(cot) and cot > 0 for cot in cots):
             bands[symbol] = Band(symbol, cots[0], min(cots), max(cots))
     return bands
 
 
-def _solved(cot: float) -> float:
+def _solved(cot: float, peaked: bool) -> float:
     """A strut limit above its peak at 45° has no solution; the peak is the nearest."""
-    return 1.0 if cot != cot else float(cot)
+    return 1.0 if peaked and math.isnan(cot) else float(cot)
 
 
 def _common(bands: Mapping[str, Band], failing: list[str]) -> float | None:

@@ -8,8 +8,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Mapping
-from dataclasses import dataclass
-from typing import Any
+from typing import Any, NamedTuple
 
 from checker.declared.model import Case, DeclaredValue, Design
 from checker.geometry.measure import Measured
@@ -24,8 +23,7 @@ LEG_BASIS = {
 """What each link area counts in its formula."""
 
 
-@dataclass(frozen=True, slots=True)
-class Claim:
+class Claim(NamedTuple):
     """One declared number, ready to be compared.
 
     Attributes:
@@ -113,7 +111,9 @@ def member_row(design: Design, measured: Measured) -> dict[str, Any]:
     return row
 
 
-def case_row(member: Mapping[str, Any], case: Case, claims: Mapping[str, Claim], inputs: frozenset[str]) -> dict[str, Any]:
+def case_row(
+    member: Mapping[str, Any], case: Case, claims: Mapping[str, Claim], inputs: frozenset[str]
+) -> dict[str, Any]:
     """One row of inputs: the member's, the case's actions, and every claim as `X_declared` (nan where unsaid)."""
     row = dict.fromkeys((name for name in inputs if name.endswith("_declared")), NAN)
     row.update(member)
@@ -134,11 +134,11 @@ def link_stress_option(member: Mapping[str, Any], claims: Mapping[str, Claim]) -
     """Whether the designer works with links stressed to 0.8 f_ywk (6.2.3(3)): by f_ywd, else by nu_1."""
     f_ywd = claims.get("f_ywd")
     if f_ywd is not None:
-        return abs(f_ywd.value - 0.8 * member["f_ywk"]) <= f_ywd.half_step + 0.005 * f_ywd.value
+        return abs(f_ywd.value - 0.8 * float(member["f_ywk"])) <= f_ywd.half_step + 0.005 * f_ywd.value
     nu_1 = claims.get("nu_1")
     if nu_1 is None:
         return False
-    f_ck = member["f_ck"]
+    f_ck = float(member["f_ck"])
     option = 0.6 if f_ck <= 60 else max(0.9 - f_ck / 200, 0.5)
     usual = 0.6 * (1 - f_ck / 250)
     return abs(nu_1.value - option) <= 0.005 * option < abs(nu_1.value - usual)

@@ -6,7 +6,8 @@ It *follows* when the same holds against the value recomputed from the designer'
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+import math
+from typing import NamedTuple
 
 from checker.review.catalogue import Catalogue, Rule
 from checker.review.claims import Claim
@@ -15,8 +16,7 @@ from checker.review.evaluated import Evaluated
 TINY = 1e-9
 
 
-@dataclass(frozen=True, slots=True)
-class Comparison:
+class Comparison(NamedTuple):
     """One declared value held against both recomputations (inside units).
 
     Attributes:
@@ -53,13 +53,14 @@ def compare(case: Evaluated, claim: Claim, rule: Rule) -> Comparison:
     symbol = claim.symbol
     readings = [symbol, *(name for name in rule.or_ if name in case.sheet.quantities)]
     from_scratch = {name: float(case.scratch[name]) for name in readings}
-    from_upstream = {name: case.upstream(name) for name in readings}
     reading = _nearest(claim.value, from_scratch)
-    follows_reading = _nearest(claim.value, from_upstream)
-    recomputed, upstream = from_scratch[reading], from_upstream[follows_reading]
+    recomputed = from_scratch[reading]
     allowed = claim.half_step + rule.tolerance * abs(recomputed)
     if _within(claim.value, recomputed, allowed):
-        return Comparison(claim, rule, reading, recomputed, upstream, allowed, True, True)
+        return Comparison(claim, rule, reading, recomputed, recomputed, allowed, True, True)
+    from_upstream = case.upstream(symbol, readings)
+    follows_reading = _nearest(claim.value, from_upstream)
+    upstream = from_upstream[follows_reading]
     inherited = case.inherited(symbol, follows_reading)
     follows = _within(claim.value, upstream, claim.half_step + inherited + rule.tolerance * abs(upstream))
     allowed += inherited
@@ -74,7 +75,7 @@ def _nearest(value: float, readings: dict[str, float]) -> str:
     for name, reading in readings.items():
         if not gap <= abs(value - reading):
             best, gap = name, abs(value - reading)
-    return best if gap == gap else first
+    return first if math.isnan(gap) else best
 
 
 def _within(a: float, b: float, allowed: float) -> bool:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass, field
-from typing import Any
+from typing import Any, NamedTuple
 
 from checker.declared.model import Place
 from checker.sheet.quantities import Sheet
@@ -14,8 +14,7 @@ PASS, FAIL, NOT_APPLICABLE, NOT_CHECKED, CRASHED = "pass", "fail", "not applicab
 UNSAFE_SIDE, SAFE_SIDE, EITHER_SIDE = "unsafe side", "safe side", "either side"
 
 
-@dataclass(frozen=True, slots=True)
-class Check:
+class Check(NamedTuple):
     """How one rule ended for one case (None: for the member). `margin` is the share of the limit left over."""
 
     rule: str
@@ -25,8 +24,7 @@ class Check:
     margin: float | None = None
 
 
-@dataclass(frozen=True, slots=True)
-class Draft:
+class Draft(NamedTuple):
     """A finding before it has a number. Numbers are in inside units; `key` is what others hang on."""
 
     rule: str
@@ -80,7 +78,7 @@ class Words:
         return with_unit(float(self.values[name]), quantity.unit)
 
     def fill(self, sentence: str) -> str:
-        return sentence.format_map(self)  # type: ignore[arg-type]
+        return sentence.format_map(self)
 
 
 def apart(first: float, second: float, unit: str) -> tuple[str, str]:
@@ -109,4 +107,4 @@ def direction_of(larger: str, declared: float, recomputed: float) -> str:
 
 
 def symbol_text(symbol: str) -> str:
-    return paper(symbol.removesuffix("_declared"))
+    return paper(symbol.removesuffix("_declared").removesuffix("_stated"))

@@ -8,17 +8,18 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass
 from functools import lru_cache
 from pathlib import Path
-from typing import Any
+from typing import Any, NamedTuple
 
 from checker import shipped
 from checker.declared.symbols import DECLARABLE
 from checker.errors import Fault, RuleFaults, UsageError
-from checker.sheet.load import DECLARED, SHEET_FOLDER, lay, load_layers, load_sheet
-from checker.sheet.program import Program, Values, build
-from checker.sheet.quantities import Layer, Sheet
+from checker.sheet import store
+from checker.sheet.load import DECLARED, LAYERS_FILE, SHEET_FOLDER, lay, load_layers, load_sheet
+from checker.sheet.program import Program, Values, assemble, build
+from checker.sheet.quantities import Layer, Sheet, packed, unpacked
+from checker.sheet.rulefile import rules_digest
 
 ASLANT = "links-aslant"
 ANGLES = ("cot_theta_shear", "cot_theta_torsion")
@@ -29,14 +30,13 @@ FOLLOWED = tuple(dict.fromkeys([*(s for s in DECLARABLE if "theta" not in s), *A
 """The symbols whose declared value is carried on in the second recomputation."""
 
 
-@dataclass(frozen=True, slots=True)
-class Engine:
+class Engine(NamedTuple):
     """A sheet under its layers with its two programs.
 
     Attributes:
         sheet: for names, units, clauses and workings.
         scratch: all quantities of the sheet.
-        follow: the same; what can be declared also as `X__own`, its value before it was overruled.
+        follow: the same, the designer's own numbers carried on.
     """
 
     sheet: Sheet
@@ -59,10 +59,19 @@ def engine(
     Raises:
         RuleFaults: an unknown annex, or a layer file that can't be used.
     """
+    outside = tuple(path for path in (annex_path(annex), office) if path is not None)
+    key = store.key_of(rules_digest(outside), standard, annex, *layers, str(columns))
+    kept = store.recall(key)
+    if kept is not None:
+        sheet_data, *programs = kept
+        scratch, follow = (assemble(*program, columns=columns) for program in programs)
+        return Engine(unpacked(sheet_data), scratch, follow)
     sheet = sheet_under(standard, annex, layers, office)
     wanted = [s for s, q in sheet.quantities.items() if not q.is_input]
     scratch = build(sheet, wanted, columns=columns)
-    return Engine(sheet, scratch, build(sheet, wanted, columns=columns, follow=FOLLOWED))
+    follow = build(sheet, wanted, columns=columns, follow=FOLLOWED)
+    store.keep(key, (packed(sheet), *((p.inputs, p.source, p.code) for p in (scratch, follow))))
+    return Engine(sheet, scratch, follow)
 
 
 def recompute(
@@ -72,17 +81,19 @@ def recompute(
     standard: str = "EN 1992-1-1:2004",
     annex: str = "recommended",
     layers: tuple[str, ...] = ("rectangle",),
+    office: Path | None = None,
 ) -> Values:
     """Single quantities from whatever is known, e.g. `recompute(["V_Rd_max"], {"b_w": 400, "z": 578, ...})`.
 
     Args:
         wanted: symbols of the sheet.
         given: inside values (N, mm, MPa, rad) that stand in for inputs or formulas: plain floats, or numpy arrays.
+        office: a layer file to lay over the annex and the shape, as for `engine`.
 
     Raises:
         UsageError: an input that the wanted quantities rest on is missing.
     """
-    sheet = sheet_under(standard, annex, layers)
+    sheet = sheet_under(standard, annex, layers, office)
     columns = any(hasattr(value, "shape") for value in given.values())
     program = build(sheet, wanted, columns=columns, given=given)
     unsaid = {name: math.nan for name in program.inputs if name.endswith(DECLARED) or name in OPTIONAL}
@@ -97,8 +108,11 @@ def recompute(
 def sheet_under(standard: str, annex: str, layers: tuple[str, ...], office: Path | None = None) -> Sheet:
     """The base sheet with the annex, the shape's layers and the office's layers over it, in this order."""
     sheet = load_sheet(standard)
-    known = load_layers(shipped.folder("rules") / SHEET_FOLDER[standard] / "shapes.yaml")
-    for layer in [*_outside_layers(annex), *(known[name] for name in layers)]:
+    known = load_layers(shipped.folder("rules") / SHEET_FOLDER[standard] / LAYERS_FILE)
+    for layer in _outside_layers(annex):
+        sheet = lay(sheet, layer)
+        sheet.check_units(layer.entries)
+    for layer in (known[name] for name in layers):
         sheet = lay(sheet, layer)
     if office is not None:
         for layer in load_layers(office, shown_as=office.name).values():

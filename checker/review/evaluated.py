@@ -2,16 +2,16 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+import math
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 from typing import Any
 
+from checker.declared.model import Case
 from checker.review.bases import settle_bases
 from checker.review.claims import Claim
 from checker.review.engine import ANGLES, Engine
-from checker.declared.model import Case
 from checker.sheet.load import DECLARED
-from checker.sheet.program import RECOMPUTED
 from checker.sheet.quantities import Sheet
 
 
@@ -23,7 +23,7 @@ class Evaluated:
         row: the inputs, claims included.
         scratch: symbol -> value from nothing but geometry, materials, steel, actions and admissible choices;
             the inputs are among them.
-        follow: symbol -> value with the designer's numbers carried on; `X__own` is X before it was overruled.
+        follow: symbol -> value with the designer's own numbers carried on wherever they are declared.
     """
 
     case: Case
@@ -37,10 +37,10 @@ class Evaluated:
     def sheet(self) -> Sheet:
         return self.engine.sheet
 
-    def upstream(self, symbol: str) -> float:
-        """X recomputed from the designer's nearest declared values."""
-        own = RECOMPUTED.format(symbol)
-        return float(self.follow[own] if own in self.follow else self.follow[symbol])
+    def upstream(self, symbol: str, readings: Iterable[str]) -> dict[str, float]:
+        """X, and other readings of it, recomputed from the designer's nearest declared values, X's own set aside."""
+        free = self.shifted({symbol: math.nan})
+        return {name: float(free[name]) for name in readings}
 
     def shifted(self, changes: Mapping[str, float]) -> Mapping[str, Any]:
         """The followed values with some declared values changed (symbol -> new value)."""
@@ -50,16 +50,51 @@ class Evaluated:
     def inherited(self, symbol: str, reading: str) -> float:
         """How far the rounding of the declared values X rests on can have moved it, to first order.
 
-        Sum of |dX/dx| times half a step of x over the nearest declared values x (inside units).
+        Sum of |dX/dx| times half a step of x over the nearest declared values x (inside units), those among
+        them that a strut angle left unsaid was read from.
         """
-        own = RECOMPUTED.format(symbol)
-        key = own if reading == symbol and own in self.follow else reading
+        free = {symbol: math.nan}
+        base = float(self.shifted(free)[reading])
         total = 0.0
-        for name in self.ancestors(symbol):
+        for name in dict.fromkeys((*self.ancestors(symbol), *self.angle_sources())):
+            if name == symbol:
+                continue
             claim = self.claims[name]
-            moved = self.shifted({name: claim.value + claim.half_step})
-            change = abs(float(moved[key]) - float(self.follow[key]))
-            total += change if change == change else 0.0
+            moved = [
+                abs(float(self.shifted({**free, name: claim.value + step})[reading]) - base)
+                for step in (-claim.half_step, claim.half_step)
+            ]
+            total += max((change for change in moved if math.isfinite(change)), default=0.0)
+        return total
+
+    def angle_sources(self) -> tuple[str, ...]:
+        """The declared values that the strut angles left unsaid were read from."""
+        found: dict[str, None] = {}
+        for side in ANGLES:
+            other = ANGLES[1 - ANGLES.index(side)]
+            if side not in self.claims:
+                source = self._implying(side) or (other if other in self.claims else self._implying(other))
+                found |= {source: None} if source else {}
+        return tuple(found)
+
+    def _implying(self, side: str) -> str | None:
+        """The first declared value, in the order of the sheet, that an angle can be solved back from."""
+        formula = self.sheet.quantities[side.replace("cot_theta", "cot_implied")].formula
+        names = formula.names if formula is not None else ()
+        solved = (name.removeprefix("cot_of_") for name in names if math.isfinite(self.scratch[name]))
+        return next((name for name in solved if name in self.claims), None)
+
+    def read_rounding(self, provided: str, limit: str) -> float:
+        """How far the rounding of the values that unsaid strut angles were read from can have moved a gap."""
+        base = float(self.scratch[provided]) - float(self.scratch[limit])
+        total = 0.0
+        for name in self.angle_sources():
+            moved: list[float] = []
+            for step in (-1, 1):
+                value = self.claims[name].value + step * self.claims[name].half_step
+                values = {**self.row, **self.engine.scratch.run({**self.row, f"{name}{DECLARED}": value})}
+                moved.append(abs(float(values[provided]) - float(values[limit]) - base))
+            total += max((change for change in moved if math.isfinite(change)), default=0.0)
         return total
 
     def ancestors(self, symbol: str) -> tuple[str, ...]:

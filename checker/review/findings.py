@@ -11,7 +11,7 @@ from __future__ import annotations
 import hashlib
 import math
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass, replace
+from typing import NamedTuple
 
 from checker.review.catalogue import GRAVITIES
 from checker.review.drafts import CRASHED, Check, Draft
@@ -21,8 +21,7 @@ ACCEPT, WITH_REMARKS, RETURN, INCOMPLETE = "accept", "accept with remarks", "ret
 EXIT_CODES = {ACCEPT: 0, WITH_REMARKS: 0, RETURN: 1, INCOMPLETE: 3}
 
 
-@dataclass(frozen=True, slots=True)
-class Finding:
+class Finding(NamedTuple):
     """One numbered finding; `draft` has all its facts, `carried_from` is the number of its root."""
 
     number: int
@@ -31,8 +30,7 @@ class Finding:
     carried_from: int | None
 
 
-@dataclass(frozen=True)
-class CaseResult:
+class CaseResult(NamedTuple):
     """What was recomputed for one case: symbol -> inside value (shown quantities only), and the strut window."""
 
     case: str
@@ -41,8 +39,7 @@ class CaseResult:
     window: Window
 
 
-@dataclass(frozen=True)
-class MemberResult:
+class MemberResult(NamedTuple):
     """One member of a report."""
 
     member: str
@@ -71,7 +68,7 @@ def merge_cases(drafts: Iterable[Draft]) -> list[Draft]:
             continue
         worse = min(known, draft, key=lambda d: (GRAVITIES.index(d.gravity), -_off(d)))
         cases = tuple(dict.fromkeys((*known.cases, *draft.cases)))
-        merged[key] = replace(worse, cases=cases)
+        merged[key] = worse._replace(cases=cases)
     return list(merged.values())
 
 
@@ -106,7 +103,14 @@ def _root_of(draft: Draft, ordered: list[Draft]) -> Draft | None:
 def _rank(draft: Draft) -> tuple[object, ...]:
     place = draft.where[0] if draft.where else (10**9, 0)
     verdict_last = 0 if draft.quantity == "verdict" else 1
-    return (GRAVITIES.index(draft.gravity), verdict_last, *place, draft.rule, draft.case or "", draft.quantity)
+    return (
+        GRAVITIES.index(draft.gravity),
+        verdict_last,
+        *place,
+        draft.rule,
+        draft.case or "",
+        draft.quantity,
+    )
 
 
 def outcome_of(gravities: Iterable[str], checks: Iterable[Check]) -> str:

@@ -10,7 +10,15 @@ from collections.abc import Callable
 
 from checker.review.catalogue import Rule
 from checker.review.drafts import (
-    CRASHED, FAIL, NOT_APPLICABLE, NOT_CHECKED, PASS, SAFE_SIDE, UNSAFE_SIDE, Check, Draft,
+    CRASHED,
+    FAIL,
+    NOT_APPLICABLE,
+    NOT_CHECKED,
+    PASS,
+    SAFE_SIDE,
+    UNSAFE_SIDE,
+    Check,
+    Draft,
 )  # fmt: skip
 from checker.review.kinds_limits import at_limit, holds
 from checker.review.kinds_strut import implied, same
@@ -26,7 +34,7 @@ def judge(subject: Subject) -> tuple[list[Check], list[Draft]]:
     for rule in rules:
         try:
             check, found = _outcome(rule, subject, drafts)
-        except Exception as error:  # noqa: BLE001 - a fault of ours in one rule must not silence the others
+        except Exception as error:
             check, found = ended(rule, subject, CRASHED, f"{type(error).__name__}: {error}"), []
         checks.append(check)
         drafts += found

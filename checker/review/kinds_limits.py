@@ -4,14 +4,22 @@ from __future__ import annotations
 
 import math
 
+from checker.declared.model import Place
 from checker.review.catalogue import BY_WINDOW, Rule
 from checker.review.claims import Claim
 from checker.review.drafts import (
-    FAIL, NOT_APPLICABLE, NOT_CHECKED, PASS, SAFE_SIDE, UNSAFE_SIDE, Draft, apart, symbol_text,
+    FAIL,
+    NOT_APPLICABLE,
+    NOT_CHECKED,
+    PASS,
+    SAFE_SIDE,
+    UNSAFE_SIDE,
+    Draft,
+    apart,
+    symbol_text,
 )  # fmt: skip
 from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
 from checker.review.window import NO_ANGLE, Window, degrees_of
-from checker.declared.model import Place
 from checker.sheet.load import DECLARED
 from checker.sheet.shown import number
 from checker.sheet.workings import working
@@ -34,6 +42,8 @@ def at_limit(rule: Rule, subject: Subject) -> Outcome:
         claim = subject.claims.get(symbol.removesuffix(DECLARED)) if symbol.endswith(DECLARED) else None
         slack = (claim.half_step if claim else 0.0) + (rule.tolerance or LIMIT_TOLERANCE) * abs(limit)
         over = value - limit if rule.kind == "at_most" else limit - value
+        if over > slack and claim is None:
+            slack += case.read_rounding(symbol, rule.limit)
         if math.isnan(over) or over > slack:
             return ended(rule, subject, FAIL, margin=_spare(over, limit)), [
                 _limit_draft(rule, subject, symbol, value, limit, claim)
@@ -54,19 +64,21 @@ def _limit_draft(
     case = subject.case
     unit = case.sheet.quantities[symbol.removesuffix(DECLARED)].unit
     provided, allowed = apart(value, limit, unit)
+    declared, bound = (claim.value if claim else None), limit
     words = words_of(subject, provided=provided, limit=allowed, window=_window_text(subject.window))
     gravity = rule.gravity
     if gravity == BY_WINDOW:
         gravity = "unsafe" if subject.window.holds == NO_ANGLE else "breach"
     name = symbol.removesuffix(DECLARED)
     shown = claim.source.symbol if claim is not None else name
+    if shown.startswith("theta"):  # claimed as an angle, compared as its cotangent
+        unit, declared, bound = "deg", math.atan2(1.0, value), math.atan2(1.0, limit)
     safe = rule.id in ("lever-arm.below-usual",)
     place = claim.source.place if claim else _place_of(subject, rule)
     return draft_of(
-        rule, subject, quantity=shown, unit=unit, key=name if claim else rule.id, says=words.fill(rule.says),
-        gravity=gravity, declared=claim.value if claim else None,
-        declared_text=claim.source.number.text if claim else "",
-        recomputed=limit if claim else value, limit=limit, where=(place,) if place else (),
+        rule, subject, claim, quantity=shown, unit=unit, key=name if claim else rule.id, says=words.fill(rule.says),
+        gravity=gravity, declared=declared,
+        recomputed=bound if claim else value, limit=bound, where=(place,) if place else (),
         direction=SAFE_SIDE if safe else UNSAFE_SIDE,
         working=working(case.sheet, rule.limit, case.scratch),
     )  # fmt: skip
@@ -99,9 +111,8 @@ def holds(rule: Rule, subject: Subject) -> Outcome:
             return ended(rule, subject, PASS), []
         claim = subject.claims[rule.declared[0]]
         draft = draft_of(
-            rule, subject, quantity=rule.declared[0], unit=case.sheet.quantities[rule.declared[0]].unit,
+            rule, subject, claim, quantity=rule.declared[0], unit=case.sheet.quantities[rule.declared[0]].unit,
             key=rule.id, says=words_of(subject).fill(rule.says), declared=claim.value,
-            declared_text=claim.source.number.text, where=(claim.source.place,),
         )  # fmt: skip
         return ended(rule, subject, FAIL), [draft]
     fact = subject.facts[rule.fact]
@@ -113,4 +124,6 @@ def holds(rule: Rule, subject: Subject) -> Outcome:
         return ended(rule, subject, PASS, fact.says), []
     says = words_of(subject, fact=fact.says + ".").fill(rule.says)
     place = (fact.place,) if fact.place else ()
-    return ended(rule, subject, FAIL, fact.says), [draft_of(rule, subject, says=says, key=rule.id, where=place)]
+    return ended(rule, subject, FAIL, fact.says), [
+        draft_of(rule, subject, says=says, key=rule.id, where=place)
+    ]

@@ -4,11 +4,11 @@ from __future__ import annotations
 
 import math
 
+from checker.declared.model import Place
 from checker.review.catalogue import Rule
 from checker.review.causes import AngleUsed
 from checker.review.drafts import EITHER_SIDE, FAIL, NOT_CHECKED, PASS, Draft, apart, symbol_text
 from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
-from checker.declared.model import Place
 from checker.sheet.shown import with_unit
 
 
@@ -17,7 +17,9 @@ def same(rule: Rule, subject: Subject) -> Outcome:
     claims = [subject.claims.get(f"cot_{symbol}") for symbol in rule.quantities]
     first, second = claims
     if first is None or second is None:
-        missing = " and ".join(symbol_text(s) for s, c in zip(rule.quantities, claims, strict=True) if c is None)
+        missing = " and ".join(
+            symbol_text(s) for s, c in zip(rule.quantities, claims, strict=True) if c is None
+        )
         return ended(rule, subject, NOT_CHECKED, f"{missing} is not declared"), []
     allowed = first.half_step + second.half_step + 0.01 * max(first.value, second.value)
     if abs(first.value - second.value) <= allowed:
@@ -26,8 +28,8 @@ def same(rule: Rule, subject: Subject) -> Outcome:
     texts = apart(degrees[0], degrees[1], "deg")
     words = words_of(subject, **dict(zip(rule.quantities, texts, strict=True)))
     draft = draft_of(
-        rule, subject, quantity=rule.quantities[1], unit="deg", key=rule.id, says=words.fill(rule.says),
-        declared=degrees[1], declared_text=second.source.number.text, recomputed=degrees[0],
+        rule, subject, second if first.source.member_wide else None,
+        quantity=rule.quantities[1], unit="deg", key=rule.id, says=words.fill(rule.says), declared=degrees[1], declared_text=second.source.number.text, recomputed=degrees[0],
         where=(first.source.place, second.source.place), direction=EITHER_SIDE,
     )  # fmt: skip
     return ended(rule, subject, FAIL), [draft]
@@ -42,29 +44,33 @@ def implied(rule: Rule, subject: Subject) -> Outcome:
         return ended(rule, subject, PASS), []
     drafts: dict[tuple[Place, ...], Draft] = {}
     for angle in angles:
-        used = math.atan2(1.0, angle.used)
-        shown = ", ".join(symbol_text(symbol) for symbol in angle.shows_in)
-        if angle.claim is None:
-            other = math.atan2(1.0, angle.other)
-            quantity, where = "theta_torsion", tuple(subject.claims[s].source.place for s in angle.shows_in)
-            claim = f"No strut angle is declared, but shear was worked with {with_unit(other, 'deg', 3)}"
-            implied = f"and torsion with {with_unit(used, 'deg', 3)} ({shown})."
-            declared_value, gravity = used, "breach"
-            recomputed = other
-        else:
-            quantity, where = angle.claim.source.symbol, (angle.claim.source.place,)
-            if angle.claim.source.symbol not in ("theta", "cot_theta"):
-                quantity = angle.side.removeprefix("cot_") if "cot" not in quantity else angle.side
-            declared_value = math.atan2(1.0, angle.claim.value)
-            claim = f"The strut angle is declared as {with_unit(declared_value, 'deg', 3)},"
-            implied = f"but {shown} were worked with {with_unit(used, 'deg', 3)}."
-            gravity, recomputed = rule.gravity, used
-        unit = "deg"
-        words = words_of(subject, claim=claim, implied=implied)
-        drafts[where] = draft_of(
-            rule, subject, quantity=quantity, unit=unit, key=angle.side, says=words.fill(rule.says), where=where,
-            declared=declared_value, recomputed=recomputed, gravity=gravity, direction=EITHER_SIDE,
-            shows_in=angle.shows_in, implied_cot=angle.used,
-            declared_text=angle.claim.source.number.text if angle.claim else "",
-        )  # fmt: skip
+        draft = _angle_draft(rule, subject, angle)
+        drafts[draft.where] = draft  # one claim for both sides speaks once
     return ended(rule, subject, FAIL), list(drafts.values())
+
+
+def _angle_draft(rule: Rule, subject: Subject, angle: AngleUsed) -> Draft:
+    """The angle that was used, against the claimed one, or torsion's against shear's where none is claimed."""
+    used = math.atan2(1.0, angle.used)
+    shown = ", ".join(symbol_text(symbol) for symbol in angle.shows_in)
+    if angle.claim is None:
+        against, gravity, quantity = math.atan2(1.0, angle.other), "breach", "theta_torsion"
+        declared, recomputed = used, against
+        where = tuple(subject.claims[symbol].source.place for symbol in angle.shows_in)
+        said = f"No strut angle is declared, but shear was worked with {with_unit(against, 'deg', 3)}"
+        found = f"and torsion with {with_unit(used, 'deg', 3)} ({shown})."
+    else:
+        against, gravity, quantity = (
+            math.atan2(1.0, angle.claim.value),
+            rule.gravity,
+            angle.claim.source.symbol,
+        )
+        declared, recomputed = against, used
+        where = (angle.claim.source.place,)
+        said = f"The strut angle is declared as {with_unit(against, 'deg', 3)},"
+        found = f"but {shown} were worked with {with_unit(used, 'deg', 3)}."
+    return draft_of(
+        rule, subject, angle.claim, quantity=quantity, unit="deg", key=angle.side, where=where, gravity=gravity,
+        says=words_of(subject, claim=said, implied=found).fill(rule.says), declared=declared, recomputed=recomputed,
+        direction=EITHER_SIDE, shows_in=angle.shows_in, implied_cot=angle.used,
+    )  # fmt: skip

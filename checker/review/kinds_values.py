@@ -5,9 +5,17 @@ from __future__ import annotations
 import math
 
 from checker.review.catalogue import Rule
+from checker.review.claims import LEG_BASIS
 from checker.review.compare import Comparison
 from checker.review.drafts import (
-    FAIL, NOT_CHECKED, PASS, Draft, apart, difference, direction_of, symbol_text,
+    FAIL,
+    NOT_CHECKED,
+    PASS,
+    Draft,
+    apart,
+    difference,
+    direction_of,
+    symbol_text,
 )  # fmt: skip
 from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
 from checker.sheet.shown import with_unit
@@ -35,23 +43,30 @@ def _agrees_draft(rule: Rule, subject: Subject, comparison: Comparison) -> Draft
     quantity = case.sheet.quantities[symbol]
     declared, recomputed = apart(claim.value, comparison.recomputed, quantity.unit)
     words = words_of(
-        subject, symbol=symbol_text(symbol), declared=declared, recomputed=recomputed,
+        subject, symbol=_opening(symbol), declared=declared, recomputed=recomputed,
         difference=difference(claim.value, comparison.recomputed, quantity.unit),
     )  # fmt: skip
-    root = subject.causes.carried.get(symbol)
+    above = subject.causes.carried.get(symbol, ())
     says = words.fill(rule.says)
-    if root is not None:
-        says += f" It follows from {_root_text(subject, root)} and is right by that."
+    if above:
+        named = " and ".join(_root_text(subject, root) for root in above)
+        says += f" It follows from {named} and is right by that."
     implied = case.follow.get(f"cot_of_{symbol}")
     return draft_of(
-        rule, subject, quantity=symbol, unit=quantity.unit, clause=quantity.clause, key=symbol, says=says,
-        declared=claim.value, declared_text=claim.source.number.text, recomputed=comparison.recomputed,
-        tolerance=comparison.tolerance, where=(claim.source.place,), hangs_on=root,
+        rule, subject, claim, quantity=symbol, unit=quantity.unit, clause=quantity.clause, key=symbol, says=says,
+        declared=claim.value, recomputed=comparison.recomputed,
+        tolerance=comparison.tolerance, hangs_on=above[0] if above else None,
         direction=direction_of(quantity.larger, claim.value, comparison.recomputed),
         implied_cot=float(implied) if implied is not None and math.isfinite(implied) else None,
         working=working(case.sheet, comparison.reading, case.scratch),
-        todo=rule.todo if root is None else "Follows the root finding.",
+        todo=rule.todo if not above else "Follows the root finding.",
     )  # fmt: skip
+
+
+def _opening(symbol: str) -> str:
+    """A symbol as the first word of a sentence; sums of ratios have names of their own."""
+    text = symbol_text(symbol)
+    return f"The {text}" if " " in text else text
 
 
 def _root_text(subject: Subject, root: str) -> str:
@@ -93,9 +108,9 @@ def _basis_draft(rule: Rule, subject: Subject, comparison: Comparison) -> Draft:
         recomputed=with_unit(needed, quantity.unit), other=with_unit(other, quantity.unit),
     )  # fmt: skip
     return draft_of(
-        rule, subject, quantity=symbol, unit=quantity.unit, key=symbol, says=words.fill(rule.says),
-        clause=quantity.clause, declared=written, declared_text=claim.source.number.text, recomputed=needed,
-        tolerance=comparison.tolerance, where=(claim.source.place,),
+        rule, subject, claim, quantity=symbol, unit=quantity.unit, key=symbol, says=words.fill(rule.says),
+        clause=quantity.clause, declared=written, recomputed=needed,
+        tolerance=comparison.tolerance,
         direction=direction_of(quantity.larger, written, needed),
         working=working(subject.case.sheet, comparison.reading, subject.case.scratch),
     )  # fmt: skip

@@ -4,8 +4,10 @@ from __future__ import annotations
 
 import math
 from collections.abc import Mapping
-from dataclasses import dataclass
+from typing import NamedTuple
 
+from checker.declared.model import Place
+from checker.geometry.facts import Fact
 from checker.review.catalogue import Catalogue, Rule
 from checker.review.causes import Causes, find_causes
 from checker.review.claims import Claim
@@ -13,12 +15,9 @@ from checker.review.compare import Comparison, compare_all
 from checker.review.drafts import UNSAFE_SIDE, Check, Draft, Words
 from checker.review.evaluated import Evaluated
 from checker.review.window import Window, window_of
-from checker.declared.model import Place
-from checker.geometry.facts import Fact
 
 
-@dataclass(frozen=True)
-class Subject:
+class Subject(NamedTuple):
     """What the rules look at: a case, its comparisons and causes, its window and the member's facts."""
 
     case: Evaluated
@@ -51,12 +50,26 @@ def ended(rule: Rule, subject: Subject, status: str, why: str = "", margin: floa
     return Check(rule.id, case, status, why, margin if margin is None or math.isfinite(margin) else None)
 
 
-def draft_of(rule: Rule, subject: Subject, **fields: object) -> Draft:
-    case = None if rule.scope == "member" else subject.case.case.name
+def draft_of(rule: Rule, subject: Subject, claim: Claim | None = None, **fields: object) -> Draft:
+    """A draft of a finding of this rule, about a claim or about the case.
+
+    What stands for the whole member (a claim under the member's `declared`, a rule of that scope) names no case.
+    """
+    wide = rule.scope == "member" or (claim is not None and claim.source.member_wide)
     defaults: dict[str, object] = {
-        "rule": rule.id, "gravity": rule.gravity, "direction": UNSAFE_SIDE, "case": case, "quantity": "",
-        "unit": "", "clause": rule.clause, "says": "", "todo": rule.todo, "cases": (subject.case.case.name,),
-    }  # fmt: skip
+        "rule": rule.id,
+        "gravity": rule.gravity,
+        "direction": UNSAFE_SIDE,
+        "case": None if wide else subject.case.case.name,
+        "cases": (subject.case.case.name,),
+        "quantity": "",
+        "unit": "",
+        "clause": rule.clause,
+        "says": "",
+        "todo": rule.todo,
+        "declared_text": claim.source.number.text if claim is not None else "",
+        "where": (claim.source.place,) if claim is not None else (),
+    }
     return Draft(**{**defaults, **fields})  # type: ignore[arg-type]
 
 

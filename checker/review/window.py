@@ -4,8 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Mapping
-from dataclasses import dataclass
-from typing import Any
+from typing import Any, NamedTuple
 
 AS_CLAIMED, OTHER_ANGLE, NO_ANGLE = "as claimed", "on another angle", "on no angle"
 CLOSE = 1e-6
@@ -14,8 +13,7 @@ FAR = 1000.0  # the sheet's stand-in for "no bound"
 Span = tuple[float, float]
 
 
-@dataclass(frozen=True, slots=True)
-class Window:
+class Window(NamedTuple):
     """Spans of cot θ, least and largest; None where nothing is left.
 
     `links`, `concrete` and `bars` are cut to what the standard allows; `admissible` is what all have in common.

@@ -10,7 +10,8 @@ from __future__ import annotations
 
 import ast
 from collections.abc import Callable
-from dataclasses import dataclass
+from functools import lru_cache
+from typing import NamedTuple
 
 FUNCTIONS: dict[str, tuple[int, int]] = {
     # name: least and most number of arguments
@@ -23,6 +24,8 @@ FUNCTIONS: dict[str, tuple[int, int]] = {
 
 MAX_LENGTH = 600
 MAX_NODES = 300
+MAX_NUMBER = 1e12
+MAX_POWER = 10
 
 _OPERATORS: dict[type[ast.AST], str] = {
     ast.Add: "+", ast.Sub: "-", ast.Mult: "*", ast.Div: "/", ast.Pow: "**",
@@ -38,19 +41,26 @@ class ExpressionError(ValueError):
         self.offset = offset
 
 
-@dataclass(frozen=True, slots=True)
-class Expression:
-    """A parsed formula.
+class Expression(NamedTuple):
+    """A formula that passed the whitelist.
 
     Attributes:
         text: the formula as written in the sheet.
-        tree: its checked syntax tree.
         names: the symbols it needs, in order of first use.
     """
 
     text: str
-    tree: ast.expr
     names: tuple[str, ...]
+
+    @property
+    def tree(self) -> ast.expr:
+        """Its syntax tree, made when first asked for."""
+        return _tree(self.text)
+
+
+@lru_cache(maxsize=4096)
+def _tree(text: str) -> ast.expr:
+    return ast.parse(text.strip(), mode="eval").body
 
 
 def parse(text: str) -> Expression:
@@ -62,20 +72,22 @@ def parse(text: str) -> Expression:
     if len(text) > MAX_LENGTH:
         raise ExpressionError(f"formula of {len(text)} characters, {MAX_LENGTH} at most")
     try:
-        tree = ast.parse(text, mode="eval").body
+        tree = _tree(text)
     except (SyntaxError, ValueError, RecursionError, MemoryError) as error:
         offset = (getattr(error, "offset", None) or 1) - 1
         raise ExpressionError("not a formula: expected arithmetic over symbols", offset) from None
     names: dict[str, None] = {}
-    count = 0
-    for node in ast.walk(tree):
-        count += 1
+    for count, node in enumerate(ast.walk(tree), 1):
         if count > MAX_NODES:
             raise ExpressionError("formula too long; split it in two quantities")
         _check(node, names)
+    called = {id(node.func) for node in ast.walk(tree) if isinstance(node, ast.Call)}
     ordered = sorted((n for n in ast.walk(tree) if isinstance(n, ast.Name)), key=lambda n: n.col_offset)
+    for name in ordered:
+        if name.id in FUNCTIONS and id(name) not in called:
+            raise ExpressionError(f"{name.id} is a function, not a symbol", name.col_offset)
     used = dict.fromkeys(n.id for n in ordered if n.id in names)
-    return Expression(text, tree, tuple(used))
+    return Expression(text, tuple(used))
 
 
 _PLAIN = (
@@ -101,6 +113,12 @@ def _check(node: ast.AST, names: dict[str, None]) -> None:
     elif isinstance(node, ast.Constant):
         if isinstance(node.value, bool) or not isinstance(node.value, int | float):
             raise ExpressionError(f"only numbers are allowed, not {node.value!r}", offset)
+        if not node.value <= MAX_NUMBER:
+            raise ExpressionError(f"numbers up to {MAX_NUMBER:g} only", offset)
+    elif isinstance(node, ast.BinOp) and isinstance(node.op, ast.Pow):
+        power = node.right.value if isinstance(node.right, ast.Constant) else 0
+        if isinstance(power, int | float) and power > MAX_POWER:
+            raise ExpressionError(f"powers up to {MAX_POWER} only", node.right.col_offset)
     elif isinstance(node, ast.Compare):
         if len(node.ops) != 1 or type(node.ops[0]) not in _OPERATORS:
             raise ExpressionError("one comparison at a time: a <= b", offset)
@@ -108,18 +126,17 @@ def _check(node: ast.AST, names: dict[str, None]) -> None:
         raise ExpressionError(f"{type(node).__name__} is not arithmetic", offset)
 
 
-def scalar_code(expression: Expression) -> str:
+def scalar_code(tree: ast.expr) -> str:
     """The formula as Python over floats; `/`, `**` and roots go through functions that never raise."""
-    return _write(expression.tree, _SCALAR)
+    return _write(tree, _SCALAR)
 
 
-def column_code(expression: Expression) -> str:
+def column_code(tree: ast.expr) -> str:
     """The formula as Python over numpy arrays; conditions become `where`."""
-    return _write(expression.tree, _COLUMN)
+    return _write(tree, _COLUMN)
 
 
-@dataclass(frozen=True, slots=True)
-class _Dialect:
+class _Dialect(NamedTuple):
     condition: str
     conjunction: dict[type[ast.AST], str]
     negation: str
@@ -171,7 +188,9 @@ _RANK = {ast.Add: 1, ast.Sub: 1, ast.Mult: 2, ast.Div: 2, ast.Pow: 4}
 _SIGNS = {"*": " · ", "/": " / ", "+": " + ", "-": " − ", "**": "^", "<=": " ≤ ", ">=": " ≥ ", "!=": " ≠ "}
 
 
-def printed(node: ast.expr, leaf: Callable[[str], str], choose: Callable[[ast.expr], bool] | None = None) -> str:
+def printed(
+    node: ast.expr, leaf: Callable[[str], str], choose: Callable[[ast.expr], bool] | None = None
+) -> str:
     """The formula as a person writes it.
 
     Args:
@@ -193,21 +212,23 @@ def printed(node: ast.expr, leaf: Callable[[str], str], choose: Callable[[ast.ex
         if isinstance(child, ast.BinOp):
             own = _RANK[type(child.op)]
             sign = _SIGNS[_OPERATORS[type(child.op)]]
-            tight = isinstance(child.op, ast.Sub | ast.Div) or isinstance(child.op, ast.Mult)
+            tight = isinstance(child.op, ast.Sub | ast.Div | ast.Mult)
             left = show(child.left, own + (1 if isinstance(child.op, ast.Pow) else 0))
-            return left + sign + show(child.right, own + (1 if tight or isinstance(child.op, ast.Pow) else 0)), own
+            return left + sign + show(
+                child.right, own + (1 if tight or isinstance(child.op, ast.Pow) else 0)
+            ), own
         if isinstance(child, ast.UnaryOp):
             return ("not " if isinstance(child.op, ast.Not) else "−") + show(child.operand, 3), 1
         if isinstance(child, ast.Compare):
             sign = _OPERATORS[type(child.ops[0])]
             return show(child.left, 1) + _SIGNS.get(sign, f" {sign} ") + show(child.comparators[0], 1), 0
         if isinstance(child, ast.BoolOp):
-            word = " and " if isinstance(child.op, ast.And) else " or "
-            return word.join(show(value, 0) for value in child.values), 0
+            word, own = (" and ", -1) if isinstance(child.op, ast.And) else (" or ", -2)
+            return word.join(show(value, own) for value in child.values), own
         if isinstance(child, ast.IfExp):
             if choose is not None:
                 return write(child.body if choose(child.test) else child.orelse)
-            return f"{show(child.body, 0)} if {show(child.test, 0)}, else {show(child.orelse, 0)}", -1
+            return f"{show(child.body, 0)} if {show(child.test, -2)}, else {show(child.orelse, 0)}", -3
         assert isinstance(child, ast.Call)
         assert isinstance(child.func, ast.Name)
         return f"{child.func.id}({', '.join(show(argument, 0) for argument in child.args)})", 9

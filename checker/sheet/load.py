@@ -7,17 +7,19 @@
 
 from __future__ import annotations
 
+from keyword import iskeyword
 from pathlib import Path
 
 from checker import shipped
 from checker.declared.tree import Mapping, Node, Scalar
 from checker.errors import Fault, RuleFaults
 from checker.sheet.dimension import UNIT_DIMENSIONS
-from checker.sheet.expression import Expression, ExpressionError, parse
+from checker.sheet.expression import FUNCTIONS, Expression, ExpressionError, parse
 from checker.sheet.quantities import Layer, Quantity, Sheet, Source
 from checker.sheet.rulefile import open_rules
 
 SHEET_FOLDER = {"EN 1992-1-1:2004": "en1992-1-1-2004"}
+PARTS = ("materials", "section", "shear", "torsion", "longitudinal", "strut")
 LAYERS_FILE = "shapes.yaml"
 DECLARED = "_declared"
 
@@ -40,14 +42,14 @@ def load_sheet(standard: str = "EN 1992-1-1:2004") -> Sheet:
     folder = shipped.folder("rules") / SHEET_FOLDER[standard]
     quantities: dict[str, Quantity] = {}
     faults: list[Fault] = []
-    for path in sorted(folder.glob("*.yaml")):
-        if path.name == LAYERS_FILE:
-            continue
+    for part in PARTS:
+        path = folder / f"{part}.yaml"
         root = open_rules(path, shipped.shown(path))
-        part = _text(root, "part")
         for symbol, (place, fields) in _entries(root, path, faults).items():
             if symbol in quantities:
-                faults.append(Fault(place.file, place.line, place.column, f"{symbol} stands twice in the sheet"))
+                faults.append(
+                    Fault(place.file, place.line, place.column, f"{symbol} stands twice in the sheet")
+                )
                 continue
             quantities[symbol] = Quantity(symbol, **fields, part=part, source=place)  # type: ignore[arg-type]
     if faults:
@@ -108,6 +110,8 @@ def load_layers(path: Path, *, shown_as: str | None = None) -> dict[str, Layer]:
     faults: list[Fault] = []
     layers: dict[str, Layer] = {}
     table = root.entries.get("layers")
+    if table is None and "rules" in root.entries:
+        return {}  # an office's file may hold rules alone
     if table is None or not isinstance(table.node, Mapping):
         raise RuleFaults([Fault(file, root.line, root.column, "expected 'layers:' with a table of layers")])
     for name, entry in table.node.entries.items():
@@ -143,8 +147,10 @@ def _entries(
     result: dict[str, tuple[Source, dict[str, object]]] = {}
     for symbol, entry in table.node.entries.items():
         place = Source(file, entry.key.line, entry.key.column)
-        if not symbol.isidentifier() or symbol.startswith("_"):
-            faults.append(Fault(file, place.line, place.column, f"{symbol!r} is not a symbol: letters, digits and _"))
+        if not symbol.isidentifier() or symbol.startswith("_") or iskeyword(symbol) or symbol in FUNCTIONS:
+            faults.append(
+                Fault(file, place.line, place.column, f"{symbol!r} is not a symbol: letters, digits and _")
+            )
             continue
         if not isinstance(entry.node, Mapping):
             faults.append(Fault(file, place.line, place.column, f"{symbol}: expected a table"))

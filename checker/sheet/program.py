@@ -1,8 +1,8 @@
 """A sheet compiled into one straight-line function, for plain numbers or for numpy columns.
 
 - Only the quantities asked for, and what they rest on, are computed, in dependency order.
-- A *followed* program takes a declared value over where there is one (`X_declared` is given), and still returns
-  what X would have been: the second of the two recomputations.
+- A *followed* program takes a declared value over wherever there is one (`X_declared` is given): the second of the
+  two recomputations.
 - Scalar arithmetic never raises: a division by zero or the root of a negative number gives inf or nan, as in columns.
 """
 
@@ -10,8 +10,8 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Iterable, Mapping
-from dataclasses import dataclass
-from typing import Any
+from types import CodeType
+from typing import Any, NamedTuple
 
 from checker.sheet.expression import column_code, scalar_code
 from checker.sheet.quantities import Sheet
@@ -23,25 +23,20 @@ SECTION = "section"
 """The one opaque input: the section's profile, handed to the solved functions."""
 
 
-@dataclass(frozen=True, slots=True)
-class Program:
+class Program(NamedTuple):
     """A compiled sheet.
 
     Attributes:
         inputs: the symbols `run` must be given.
-        outputs: the symbols it returns.
-        code: the generated source, for those who want to read it.
+        source: the generated Python, for those who want to read it.
+        code: the same, compiled.
         run: inputs -> outputs.
     """
 
     inputs: tuple[str, ...]
-    outputs: tuple[str, ...]
-    code: str
+    source: str
+    code: CodeType
     run: Callable[[Mapping[str, Any]], Values]
-
-
-RECOMPUTED = "{}__own"
-"""In a followed program, the name under which X's own recomputed value is returned beside the declared one."""
 
 
 def build(
@@ -69,25 +64,26 @@ def build(
     declared = [f"{s}_declared" for s in needed if s in followed and s not in inputs]
     inputs += [name for name in declared if name not in inputs]
     write = column_code if columns else scalar_code
-    lines = [f"    {symbol} = x[{symbol!r}]" for symbol in inputs]
-    outputs = list(wanted)
+    lines = [f"    {symbol} = _x[{symbol!r}]" for symbol in inputs]
     for symbol in needed:
         formula = sheet.quantities[symbol].formula
         if formula is None or symbol in cut:
             continue
         if symbol not in followed:
-            lines.append(f"    {symbol} = {write(formula)}")
+            lines.append(f"    {symbol} = {write(formula.tree)}")
             continue
-        own = RECOMPUTED.format(symbol)
-        lines.append(f"    {own} = {write(formula)}")
-        lines.append(f"    {symbol} = _first_given({symbol}_declared, {own})")
-        if symbol in wanted:
-            outputs.append(own)
-    returned = ", ".join(f"{name!r}: {name}" for name in outputs)
-    code = "def run(x):\n" + "\n".join(lines) + "\n    return {" + returned + "}\n"
+        lines.append(f"    {symbol} = _first_given({symbol}_declared, {write(formula.tree)})")
+    returned = ", ".join(f"{name!r}: {name}" for name in wanted)
+    source = "def run(_x):\n" + "\n".join(lines) + "\n    return {" + returned + "}\n"
+    code = compile(source, f"<sheet {sheet.id}>", "exec", optimize=2)
+    return assemble(tuple(inputs), source, code, columns=columns)
+
+
+def assemble(inputs: tuple[str, ...], source: str, code: CodeType, *, columns: bool) -> Program:
+    """A program from its compiled code."""
     namespace = dict(column_namespace() if columns else scalar_namespace())
-    exec(compile(code, f"<sheet {sheet.id}>", "exec"), namespace)
-    return Program(tuple(inputs), tuple(outputs), code, namespace["run"])
+    exec(code, namespace)
+    return Program(inputs, source, code, namespace["run"])
 
 
 def scalar_namespace() -> dict[str, Any]:
@@ -139,7 +135,11 @@ def column_namespace() -> dict[str, Any]:
 def _div(a: float, b: float) -> float:
     if b:
         return a / b
-    return math.nan if a == 0 or a != a or b != b else math.copysign(math.inf, a) * math.copysign(1.0, b)
+    return (
+        math.nan
+        if a == 0 or math.isnan(a) or math.isnan(b)
+        else math.copysign(math.inf, a) * math.copysign(1.0, b)
+    )
 
 
 def _pow(a: float, b: float) -> float:
@@ -164,11 +164,11 @@ def _cot(angle: float) -> float:
 
 
 def _least(*values: float) -> float:
-    return math.nan if any(value != value for value in values) else min(values)
+    return math.nan if any(map(math.isnan, values)) else min(values)
 
 
 def _greatest(*values: float) -> float:
-    return math.nan if any(value != value for value in values) else max(values)
+    return math.nan if any(map(math.isnan, values)) else max(values)
 
 
 def _first_given(*values: float) -> float:

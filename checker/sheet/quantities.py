@@ -9,16 +9,16 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from functools import cached_property
+from typing import Any, NamedTuple
 
 from checker.errors import Fault, RuleFaults
 from checker.sheet.dimension import UNIT_DIMENSIONS, describe, dimension_of
 from checker.sheet.expression import Expression, ExpressionError
 
 
-@dataclass(frozen=True, slots=True)
-class Source:
+class Source(NamedTuple):
     """Where an entry stands, for messages."""
 
     file: str
@@ -26,8 +26,7 @@ class Source:
     column: int
 
 
-@dataclass(frozen=True, slots=True)
-class Quantity:
+class Quantity(NamedTuple):
     """One line of the sheet.
 
     Attributes:
@@ -61,8 +60,7 @@ class Quantity:
         return self.formula is None
 
 
-@dataclass(frozen=True, slots=True)
-class Layer:
+class Layer(NamedTuple):
     """Quantities that replace or extend those of a sheet.
 
     Attributes:
@@ -93,7 +91,7 @@ class Sheet:
         for symbol, fields in layer.entries.items():
             known = merged.get(symbol)
             merged[symbol] = (
-                replace(known, **fields)  # type: ignore[arg-type]
+                known._replace(**fields)  # type: ignore[arg-type]
                 if known is not None
                 else Quantity(symbol, **fields)  # type: ignore[arg-type]
             )
@@ -176,6 +174,28 @@ class Sheet:
             formula = self.quantities[symbol].formula
             stack.extend(formula.names if formula is not None and symbol not in given else ())
         return tuple(symbol for symbol in self.order if symbol in reach)
+
+
+def packed(sheet: Sheet) -> tuple[object, ...]:
+    """A sheet as plain data, to be kept between runs."""
+    rows = [
+        (q.symbol, q.name, q.unit, q.clause, q.formula and (q.formula.text, q.formula.names), q.basis, q.empirical,
+         q.larger, q.kind, q.part, q.note, (q.source.file, q.source.line, q.source.column))
+        for q in sheet.quantities.values()
+    ]  # fmt: skip
+    return sheet.id, tuple(rows), sheet.layers, sheet.order
+
+
+def unpacked(data: tuple[Any, ...]) -> Sheet:
+    """The sheet that `packed` made."""
+    id_, rows, layers, order = data
+    quantities = {
+        row[0]: Quantity(*row[:4], row[4] and Expression(*row[4]), *row[5:11], Source(*row[11]))  # type: ignore[call-arg]
+        for row in rows
+    }
+    sheet = Sheet(id_, quantities, layers)
+    sheet.__dict__["order"] = order  # what the cached property would work out again
+    return sheet
 
 
 def _fault(quantity: Quantity, message: str, offset: int = 0) -> Fault:

@@ -1,9 +1,11 @@
-"""Opening a rule file (sheet, layers, checks): its table of keys, or every fault of its form."""
+"""Rule files (sheet, layers, checks): opening one with every fault of its form, and the digest of them all."""
 
 from __future__ import annotations
 
+import hashlib
 from pathlib import Path
 
+from checker import shipped
 from checker.declared.reading import read, read_tree
 from checker.declared.tree import Mapping
 from checker.errors import Fault, InputFaults, RuleFaults
@@ -24,3 +26,15 @@ def open_rules(path: Path, shown_as: str) -> Mapping:
     if faults or not isinstance(node, Mapping):
         raise RuleFaults(faults or [Fault(shown_as, 1, 1, "expected a table of keys")])
     return node
+
+
+def rules_digest(extra: tuple[Path, ...] = ()) -> str:
+    """SHA-256 over every shipped rule file, in order, and the extra ones; it names the rule set in a report."""
+    base = shipped.folder("rules")
+    digest = hashlib.sha256()
+    for path in [*sorted(base.rglob("*.yaml")), *extra]:
+        name = path.relative_to(base).as_posix() if path.is_relative_to(base) else f"extra/{path.name}"
+        content = path.read_bytes().replace(b"\r\n", b"\n")
+        digest.update(f"{name}\n{len(content)}\n".encode())
+        digest.update(content)
+    return digest.hexdigest()

@@ -10,7 +10,14 @@ SHOWN_FACTOR: dict[str, float] = {
 }  # fmt: skip
 """Inside value times this is the value in the shown unit (inside: N, mm, N*mm, MPa, rad)."""
 
-UNIT_TEXT: dict[str, str] = {"-": "", "flag": "", "deg": "°", "mm2": " mm²", "mm3": " mm³", "mm2/mm": " mm²/mm"}
+UNIT_TEXT: dict[str, str] = {
+    "-": "",
+    "flag": "",
+    "deg": "°",
+    "mm2": " mm²",
+    "mm3": " mm³",
+    "mm2/mm": " mm²/mm",
+}
 
 _GREEK = {
     "alpha": "α", "gamma": "γ", "delta": "Δ", "eta": "η", "theta": "θ", "kappa": "κ", "lambda": "λ", "nu": "ν",

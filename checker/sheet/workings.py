@@ -11,7 +11,7 @@ import math
 from collections.abc import Mapping
 from typing import Any
 
-from checker.sheet.expression import Expression, printed, scalar_code
+from checker.sheet.expression import printed, scalar_code
 from checker.sheet.program import scalar_namespace
 from checker.sheet.quantities import Quantity, Sheet
 from checker.sheet.shown import number, paper, with_unit
@@ -49,7 +49,7 @@ def in_numbers(sheet: Sheet, symbol: str, values: Mapping[str, Any]) -> str:
         return number(float(value), DIGITS)
 
     def choose(test: ast.expr) -> bool:
-        code = scalar_code(Expression("", test, ()))
+        code = scalar_code(test)
         return bool(eval(code, {**namespace, **values}))
 
     return printed(formula.tree, leaf, choose)
@@ -64,7 +64,7 @@ def working(sheet: Sheet, symbol: str, values: Mapping[str, Any]) -> str:
     namespace = scalar_namespace()
 
     def choose(test: ast.expr) -> bool:
-        return bool(eval(scalar_code(Expression("", test, ())), {**namespace, **values}))
+        return bool(eval(scalar_code(test), {**namespace, **values}))
 
     symbols = printed(quantity.formula.tree, paper, choose)
     numbers = in_numbers(sheet, symbol, values)

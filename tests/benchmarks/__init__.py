@@ -1,0 +1,1 @@
+"""Benchmarks: ratios of our own work to a plain yardstick, both measured side by side in one run."""
