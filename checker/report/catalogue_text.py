@@ -15,6 +15,7 @@ WIDTH = 100
 
 KIND_WORDS = {
     "agrees": "the declared value against the recomputed one",
+    "traced": "declared values that come out as if the section had another size",
     "same": "two declared values are equal",
     "implied": "the strut angle solved back from declared values against the one claimed",
     "at_most": "what is provided is at most the limit",

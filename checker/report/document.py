@@ -84,7 +84,7 @@ def _finding(finding: Finding, file: str) -> dict[str, Any]:
         "shows_in": list(draft.shows_in),
         "carried_from": finding.carried_from,
         "implied_theta": _implied(draft),
-        "workings": {"right": draft.working or None, "wrong": None},
+        "workings": {"right": draft.working or None, "wrong": draft.wrong_working or None},
     }
 
 

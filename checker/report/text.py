@@ -136,8 +136,10 @@ def _finding(finding: Finding, file: str, *, workings: bool) -> str:
     body = [draft.says, f"To do: {draft.todo}"]
     facts = "; ".join(filter(None, (f"Clause {draft.clause}" if draft.clause else "", case, place)))
     lines = [head, *(_wrapped(text) for text in body), _wrapped(facts)]
+    if workings and draft.wrong_working:
+        lines.append(_wrapped("Wrong: " + draft.wrong_working))
     if workings and draft.working:
-        lines.append(_wrapped("Working: " + draft.working))
+        lines.append(_wrapped("Right: " + draft.working))
     return "\n".join(lines)
 
 

@@ -17,7 +17,18 @@ from checker.errors import Fault, RuleFaults
 from checker.sheet.quantities import Sheet
 from checker.sheet.rulefile import open_rules
 
-KINDS = ("agrees", "same", "implied", "at_most", "at_least", "holds", "basis", "basis-unsaid", "verdict")
+KINDS = (
+    "agrees",
+    "traced",
+    "same",
+    "implied",
+    "at_most",
+    "at_least",
+    "holds",
+    "basis",
+    "basis-unsaid",
+    "verdict",
+)
 GRAVITIES = ("unsafe", "breach", "mismatch", "remark")
 BY_WINDOW = "by-window"
 DEFAULT_TOLERANCE = 0.01
@@ -68,10 +79,10 @@ class Rule(NamedTuple):
 
 
 class Catalogue(NamedTuple):
-    """All rules in order, and the digest of every rule file that took part."""
+    """All rules in order; `office` is the file an office laid over them, which may hold slips as well."""
 
     rules: MappingABC[str, Rule]
-    digest: str
+    office: Path | None = None
 
     def by_quantity(self, symbol: str) -> Rule | None:
         """The rule that holds a declared value against the recomputed one."""
@@ -100,7 +111,7 @@ def load_catalogue(extra: Path | None = None, shown_as: str = "") -> Catalogue:
         _read_rules(extra, shown_as or extra.name, rules, faults)
     if faults:
         raise RuleFaults(faults)
-    return Catalogue(rules, "")
+    return Catalogue(rules, extra)
 
 
 def check_against(catalogue: Catalogue, sheet: Sheet, file: str) -> None:
@@ -124,7 +135,7 @@ def _read_rules(path: Path, file: str, rules: dict[str, Rule], faults: list[Faul
     root = open_rules(path, file)
     table = root.entries.get("rules")
     if table is None or not isinstance(table.node, Mapping):
-        if "layers" in root.entries:
+        if "layers" in root.entries or "slips" in root.entries:
             return
         faults.append(Fault(file, 1, 1, "expected 'rules:' with a table of rules"))
         return

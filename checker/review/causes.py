@@ -47,6 +47,7 @@ class AngleUsed(NamedTuple):
         used: the cot θ the values imply.
         shows_in: the values it shows in.
         other: the other side's angle, where nothing was claimed.
+        both: one claim stands for shear and torsion, and both were worked with `used`.
     """
 
     side: str
@@ -54,6 +55,7 @@ class AngleUsed(NamedTuple):
     used: float
     shows_in: tuple[str, ...]
     other: float = math.nan
+    both: bool = False
 
 
 class Causes(NamedTuple):
@@ -81,13 +83,14 @@ def find_causes(
         broken_choices: choices (z, cot θ) whose claim was not admissible, so that what follows hangs on them.
     """
     angles = angles_used(case, compared)
-    hangs_on: dict[str, tuple[str, ...]] = {choice: (choice,) for choice in broken_choices}
+    hangs_on: dict[str, tuple[str, ...]] = {choice: (_root(case, choice),) for choice in broken_choices}
     roots: list[str] = []
     carried: dict[str, tuple[str, ...]] = {}
     for angle in angles:
         if angle.claim is None:
             continue
-        hangs_on.setdefault(angle.side, (angle.side,))
+        for side in SIDES if angle.both else (angle.side,):
+            hangs_on.setdefault(side, (angle.side,))
         for symbol in angle.shows_in:
             hangs_on[symbol] = carried[symbol] = (angle.side,)
     for symbol, comparison in compared.items():
@@ -113,11 +116,23 @@ def angles_used(case: Evaluated, compared: Mapping[str, Comparison]) -> tuple[An
             continue
         bands = bands_of(case, symbols)
         used = _common(bands, failing)
-        if used is not None and not _is(case.scratch[side], used):
+        if used is None or _is(claim.value, used):
+            continue
+        first = found[0] if found else None
+        if first is not None and _root(case, side) == first.side and _is(first.used, used):
+            found[0] = first._replace(shows_in=(*first.shows_in, *failing), both=True)
+        else:
             found.append(AngleUsed(side, claim, used, tuple(failing)))
     if not found and not any(side in case.claims for side in SIDES):
         found += _parted(case)
     return tuple(found)
+
+
+def _root(case: Evaluated, choice: str) -> str:
+    """The choice itself, or shear's angle where one claim stands for both: what is said of it is said once."""
+    shear, torsion = (case.claims.get(side) for side in SIDES)
+    shared = shear is not None and torsion is not None and shear.source is torsion.source
+    return "cot_theta_shear" if shared and choice in SIDES else choice
 
 
 def bands_of(case: Evaluated, symbols: tuple[str, ...]) -> dict[str, Band]:

@@ -101,6 +101,9 @@ def member_row(design: Design, measured: Measured) -> dict[str, Any]:
         "section": measured.section,
         "unsaid": NAN,
     }
+    heights = [bar.y for bar in measured.bars]
+    row["a_s_outer_bottom"] = min(heights)
+    row["a_s_outer_top"] = measured.section.h - max(heights)
     row |= {name: number.value for name, number in design.section.sizes.items()}
     for sense, strips in (
         ("sagging", measured.section.strips_sagging),

@@ -49,6 +49,7 @@ class Draft(NamedTuple):
     hangs_on: str | None = None
     implied_cot: float | None = None
     working: str = ""
+    wrong_working: str = ""
     cases: tuple[str, ...] = ()
 
     @property

@@ -22,7 +22,7 @@ from checker.review.drafts import (
 )  # fmt: skip
 from checker.review.kinds_limits import at_limit, holds
 from checker.review.kinds_strut import implied, same
-from checker.review.kinds_values import agrees, basis
+from checker.review.kinds_values import agrees, basis, traced
 from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
 
 
@@ -73,6 +73,6 @@ def _verdict(rule: Rule, subject: Subject, before: list[Draft]) -> Outcome:
 
 
 _KINDS: dict[str, Callable[[Rule, Subject], Outcome]] = {
-    "agrees": agrees, "same": same, "implied": implied, "at_most": at_limit, "at_least": at_limit,
+    "agrees": agrees, "traced": traced, "same": same, "implied": implied, "at_most": at_limit, "at_least": at_limit,
     "holds": holds, "basis": basis, "basis-unsaid": basis,
 }  # fmt: skip

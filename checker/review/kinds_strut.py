@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import math
 
-from checker.declared.model import Place
 from checker.review.catalogue import Rule
 from checker.review.causes import AngleUsed
 from checker.review.drafts import EITHER_SIDE, FAIL, NOT_CHECKED, PASS, Draft, apart, symbol_text
@@ -29,7 +28,8 @@ def same(rule: Rule, subject: Subject) -> Outcome:
     words = words_of(subject, **dict(zip(rule.quantities, texts, strict=True)))
     draft = draft_of(
         rule, subject, second if first.source.member_wide else None,
-        quantity=rule.quantities[1], unit="deg", key=rule.id, says=words.fill(rule.says), declared=degrees[1], declared_text=second.source.number.text, recomputed=degrees[0],
+        quantity=rule.quantities[1], unit="deg", key=rule.id, says=words.fill(rule.says),
+        declared=degrees[1], declared_text=second.source.number.text, recomputed=degrees[0],
         where=(first.source.place, second.source.place), direction=EITHER_SIDE,
     )  # fmt: skip
     return ended(rule, subject, FAIL), [draft]
@@ -42,11 +42,7 @@ def implied(rule: Rule, subject: Subject) -> Outcome:
         if not any(name.removeprefix("cot_of_") in subject.claims for name in declared):
             return ended(rule, subject, NOT_CHECKED, "no declared value rests on the strut angle"), []
         return ended(rule, subject, PASS), []
-    drafts: dict[tuple[Place, ...], Draft] = {}
-    for angle in angles:
-        draft = _angle_draft(rule, subject, angle)
-        drafts[draft.where] = draft  # one claim for both sides speaks once
-    return ended(rule, subject, FAIL), list(drafts.values())
+    return ended(rule, subject, FAIL), [_angle_draft(rule, subject, angle) for angle in angles]
 
 
 def _angle_draft(rule: Rule, subject: Subject, angle: AngleUsed) -> Draft:
@@ -63,7 +59,7 @@ def _angle_draft(rule: Rule, subject: Subject, angle: AngleUsed) -> Draft:
         against, gravity, quantity = (
             math.atan2(1.0, angle.claim.value),
             rule.gravity,
-            angle.claim.source.symbol,
+            _told_as(angle, subject),
         )
         declared, recomputed = against, used
         where = (angle.claim.source.place,)
@@ -74,3 +70,11 @@ def _angle_draft(rule: Rule, subject: Subject, angle: AngleUsed) -> Draft:
         says=words_of(subject, claim=said, implied=found).fill(rule.says), declared=declared, recomputed=recomputed,
         direction=EITHER_SIDE, shows_in=angle.shows_in, implied_cot=angle.used,
     )  # fmt: skip
+
+
+def _told_as(angle: AngleUsed, subject: Subject) -> str:
+    """The symbol a claimed angle is told under: as it was claimed, or by its side where one claim is told twice."""
+    assert angle.claim is not None
+    symbol = angle.claim.source.symbol
+    general = symbol in ("theta", "cot_theta")
+    return f"theta_{angle.side.split('_')[-1]}" if general and len(subject.causes.angles) > 1 else symbol

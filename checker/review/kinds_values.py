@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 
+from checker.review.bench import Explanation
 from checker.review.catalogue import Rule
 from checker.review.claims import LEG_BASIS
 from checker.review.compare import Comparison
@@ -17,14 +18,20 @@ from checker.review.drafts import (
     direction_of,
     symbol_text,
 )  # fmt: skip
+from checker.review.solved import SIZES
+from checker.review.stretch import Stretch
 from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
 from checker.sheet.shown import with_unit
 from checker.sheet.workings import working
 
 
 def agrees(rule: Rule, subject: Subject) -> Outcome:
+    """A declared value against the recomputed one; or an undeclared one that wrong values betray."""
     comparison = subject.compared.get(rule.quantity)
     if comparison is None:
+        betrayed = _betrayed(rule, subject, rule.quantity)
+        if betrayed is not None:
+            return ended(rule, subject, FAIL), [betrayed]
         return ended(rule, subject, NOT_CHECKED, f"{symbol_text(rule.quantity)} is not declared"), []
     symbol, claim = rule.quantity, comparison.claim
     if math.isnan(comparison.recomputed):
@@ -38,6 +45,14 @@ def agrees(rule: Rule, subject: Subject) -> Outcome:
     return ended(rule, subject, PASS, why, margin=margin), []
 
 
+def traced(rule: Rule, subject: Subject) -> Outcome:
+    """A size of the section that the declared values were not worked with."""
+    if not subject.compared:
+        return ended(rule, subject, NOT_CHECKED, "no value is declared"), []
+    found = [draft for name in SIZES if (draft := _betrayed(rule, subject, name)) is not None]
+    return ended(rule, subject, FAIL if found else PASS), found
+
+
 def _agrees_draft(rule: Rule, subject: Subject, comparison: Comparison) -> Draft:
     case, symbol, claim = subject.case, rule.quantity, comparison.claim
     quantity = case.sheet.quantities[symbol]
@@ -46,11 +61,10 @@ def _agrees_draft(rule: Rule, subject: Subject, comparison: Comparison) -> Draft
         subject, symbol=_opening(symbol), declared=declared, recomputed=recomputed,
         difference=difference(claim.value, comparison.recomputed, quantity.unit),
     )  # fmt: skip
-    above = subject.causes.carried.get(symbol, ())
-    says = words.fill(rule.says)
-    if above:
-        named = " and ".join(_root_text(subject, root) for root in above)
-        says += f" It follows from {named} and is right by that."
+    above = subject.roots_of(symbol)
+    cause = subject.explained.get(symbol)
+    own = cause is not None and cause.quantity == symbol
+    says = " ".join(filter(None, (words.fill(rule.says), _reason(subject, comparison, above, cause))))
     implied = case.follow.get(f"cot_of_{symbol}")
     return draft_of(
         rule, subject, claim, quantity=symbol, unit=quantity.unit, clause=quantity.clause, key=symbol, says=says,
@@ -60,6 +74,81 @@ def _agrees_draft(rule: Rule, subject: Subject, comparison: Comparison) -> Draft
         implied_cot=float(implied) if implied is not None and math.isfinite(implied) else None,
         working=working(case.sheet, comparison.reading, case.scratch),
         todo=rule.todo if not above else "Follows the root finding.",
+        slip=cause.slip if cause and own else None, slips=cause.fits if cause and own else (),
+        shows_in=_others(cause, symbol) if cause and own else (),
+        wrong_working=_wrong_working(subject, cause) if cause and own else "",
+    )  # fmt: skip
+
+
+def _reason(
+    subject: Subject, comparison: Comparison, above: tuple[str, ...], cause: Explanation | None
+) -> str:
+    """Why the value is wrong: what it follows from, the slip that gives it, or that none is known."""
+    symbol, claim = comparison.claim.symbol, comparison.claim
+    unit = subject.case.sheet.quantities[symbol].unit
+    if above:
+        named = " and ".join(_root_text(subject, root) for root in above)
+        return f"It follows from {named} and is right by that."
+    fed = [
+        s for s in subject.case.ancestors(symbol) if s in subject.causes.roots or s in subject.causes.carried
+    ]
+    part = ""
+    if fed and abs(comparison.upstream - comparison.recomputed) > comparison.tolerance:
+        upstream = with_unit(comparison.upstream, unit)
+        share = difference(claim.value, comparison.upstream, unit)
+        part = f" With the declared {', '.join(map(symbol_text, fed))} it would be {upstream}; {share} is its own error."
+    if cause is None or not cause.says:
+        return f"No known slip gives this value.{part}"
+    if cause.slip is None:
+        return f"No known slip gives this value; it is off by {cause.says}.{part}"
+    return f"The number comes out if {_slip_text(cause)}.{part}"
+
+
+def _slip_text(cause: Explanation) -> str:
+    """The slip in words, with the ids of others that fit as well."""
+    others = [
+        name for name in cause.fits if name != " + ".join((cause.slip or "", *(s.id for s in cause.beside)))
+    ]
+    also = f" (equally possible: {', '.join(others)})" if others else ""
+    return cause.says + also
+
+
+def _others(cause: Explanation, symbol: str) -> tuple[str, ...]:
+    return tuple(name for name in cause.shows_in if name != symbol)
+
+
+def _wrong_working(subject: Subject, cause: Explanation) -> str:
+    """The working with the slip in it, on the designer's own numbers."""
+    lines = []
+    stretch = Stretch(subject.case, cause.shows_in[0])
+    values = stretch.worked(cause.replaced)
+    for symbol, formula in cause.replaced.items():
+        if symbol in stretch:
+            lines.append(working(subject.case.sheet, symbol, values, formula))
+    return "; ".join(lines)
+
+
+def _betrayed(rule: Rule, subject: Subject, name: str) -> Draft | None:
+    """A quantity that isn't declared, but that wrong declared values show to have been something else."""
+    cause = next((c for c in subject.explained.values() if c.quantity == name), None)
+    if cause is None:
+        return None
+    case, quantity = subject.case, subject.case.sheet.quantities[name]
+    right = float(case.scratch[name])
+    claims = [subject.claims[symbol] for symbol in cause.shows_in]
+    used, recomputed = apart(cause.used, right, quantity.unit)
+    shown = ", ".join(symbol_text(symbol) for symbol in cause.shows_in)
+    says = f"{_opening(name)} is not declared, but {shown} came out as if it were {used}; it is {recomputed}."
+    if cause.slip not in (None, "stale-value"):
+        says += f" That is so if {_slip_text(cause)}."
+    wide = all(claim.source.member_wide for claim in claims)
+    return draft_of(
+        rule, subject, claims[0] if wide else None, quantity=name, unit=quantity.unit, key=name, says=says,
+        clause=quantity.clause, recomputed=right, direction=direction_of(quantity.larger, cause.used, right),
+        where=tuple(claim.source.place for claim in claims), declared_text="", slip=cause.slip, slips=cause.fits,
+        shows_in=cause.shows_in, working=working(case.sheet, name, case.scratch),
+        wrong_working=_wrong_working(subject, cause),
+        todo="Work the values again with the right one, or say on what they rest.",
     )  # fmt: skip
 
 
@@ -70,9 +159,12 @@ def _opening(symbol: str) -> str:
 
 
 def _root_text(subject: Subject, root: str) -> str:
-    claim = subject.claims[root]
     unit = subject.case.sheet.quantities[root].unit
-    return f"{symbol_text(root)} = {with_unit(claim.value, unit)}"
+    claim = subject.claims.get(root)
+    if claim is not None:
+        return f"{symbol_text(root)} = {with_unit(claim.value, unit)}"
+    cause = next(c for c in subject.explained.values() if c.quantity == root)
+    return f"{symbol_text(root)} = {with_unit(cause.used, unit)} (not declared)"
 
 
 def basis(rule: Rule, subject: Subject) -> Outcome:

@@ -8,12 +8,15 @@ from typing import NamedTuple
 
 from checker.declared.model import Place
 from checker.geometry.facts import Fact
+from checker.review.bench import Explanation
 from checker.review.catalogue import Catalogue, Rule
 from checker.review.causes import Causes, find_causes
 from checker.review.claims import Claim
 from checker.review.compare import Comparison, compare_all
 from checker.review.drafts import UNSAFE_SIDE, Check, Draft, Words
 from checker.review.evaluated import Evaluated
+from checker.review.explain import Reasoner
+from checker.review.slips import load_slips
 from checker.review.window import Window, window_of
 
 
@@ -27,10 +30,17 @@ class Subject(NamedTuple):
     window: Window
     facts: Mapping[str, Fact]
     places: Mapping[str, Place]
+    explained: Mapping[str, Explanation]
 
     @property
     def claims(self) -> Mapping[str, Claim]:
         return self.case.claims
+
+    def roots_of(self, symbol: str) -> tuple[str, ...]:
+        """What a carried value hangs on: declared roots, or the undeclared quantity they show."""
+        above = self.causes.carried.get(symbol, (symbol,) if symbol in self.causes.roots else ())
+        named = (self.explained[root].quantity if root in self.explained else root for root in above)
+        return tuple(root for root in dict.fromkeys(named) if root != symbol)
 
 
 Outcome = tuple[Check, list[Draft]]
@@ -42,7 +52,11 @@ def subject_of(
     """Compare, find causes, open the window: all that rules look at."""
     compared = compare_all(case, catalogue)
     causes = find_causes(case, compared, _broken_choices(case))
-    return Subject(case, catalogue, compared, causes, window_of(case.scratch), facts, places)
+    explained: dict[str, Explanation] = {}
+    if causes.roots:
+        for cause in Reasoner(case, compared, causes, load_slips(catalogue.office)).explain():
+            explained |= dict.fromkeys(cause.shows_in, cause)
+    return Subject(case, catalogue, compared, causes, window_of(case.scratch), facts, places, explained)
 
 
 def ended(rule: Rule, subject: Subject, status: str, why: str = "", margin: float | None = None) -> Check:

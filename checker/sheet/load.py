@@ -19,7 +19,7 @@ from checker.sheet.quantities import Layer, Quantity, Sheet, Source
 from checker.sheet.rulefile import open_rules
 
 SHEET_FOLDER = {"EN 1992-1-1:2004": "en1992-1-1-2004"}
-PARTS = ("materials", "section", "shear", "torsion", "longitudinal", "strut")
+PARTS = ("materials", "section", "shear", "torsion", "longitudinal", "strut", "reserve")
 LAYERS_FILE = "shapes.yaml"
 DECLARED = "_declared"
 
@@ -76,7 +76,7 @@ def complete(sheet: Sheet) -> Sheet:
 
 def lay(sheet: Sheet, layer: Layer) -> Sheet:
     """The sheet under a layer, complete again."""
-    merged = Sheet(sheet.id, {**sheet.quantities})
+    merged = Sheet(sheet.id, {**sheet.quantities}, sheet.layers)
     for symbol, fields in layer.entries.items():
         if symbol not in merged.quantities and not {"name", "unit"} <= set(fields):
             source = fields.get("source", layer.source)
@@ -110,8 +110,8 @@ def load_layers(path: Path, *, shown_as: str | None = None) -> dict[str, Layer]:
     faults: list[Fault] = []
     layers: dict[str, Layer] = {}
     table = root.entries.get("layers")
-    if table is None and "rules" in root.entries:
-        return {}  # an office's file may hold rules alone
+    if table is None and ("rules" in root.entries or "slips" in root.entries):
+        return {}  # an office's file may hold rules or slips alone
     if table is None or not isinstance(table.node, Mapping):
         raise RuleFaults([Fault(file, root.line, root.column, "expected 'layers:' with a table of layers")])
     for name, entry in table.node.entries.items():

@@ -11,7 +11,7 @@ import math
 from collections.abc import Mapping
 from typing import Any
 
-from checker.sheet.expression import printed, scalar_code
+from checker.sheet.expression import Expression, printed, scalar_code
 from checker.sheet.program import scalar_namespace
 from checker.sheet.quantities import Quantity, Sheet
 from checker.sheet.shown import number, paper, with_unit
@@ -27,15 +27,16 @@ def in_symbols(quantity: Quantity) -> str:
     return f"{paper(quantity.symbol)} = {printed(quantity.formula.tree, paper)}"
 
 
-def in_numbers(sheet: Sheet, symbol: str, values: Mapping[str, Any]) -> str:
+def in_numbers(sheet: Sheet, symbol: str, values: Mapping[str, Any], wrong: Expression | None = None) -> str:
     """The right-hand side with numbers, in inside units, of the branch that ran.
 
     Args:
         sheet: with the layers the values were computed under.
         symbol: the quantity.
         values: inside values of every symbol its formula names.
+        wrong: a formula to show in place of the quantity's own (that of a slip).
     """
-    formula = sheet.quantities[symbol].formula
+    formula = wrong or sheet.quantities[symbol].formula
     assert formula is not None
     namespace = scalar_namespace()
 
@@ -55,19 +56,23 @@ def in_numbers(sheet: Sheet, symbol: str, values: Mapping[str, Any]) -> str:
     return printed(formula.tree, leaf, choose)
 
 
-def working(sheet: Sheet, symbol: str, values: Mapping[str, Any]) -> str:
-    """One line: symbols = numbers = result with its unit, e.g. `V_Rd,max = … = 1 · 400 · … = 841.9 kN`."""
+def working(sheet: Sheet, symbol: str, values: Mapping[str, Any], wrong: Expression | None = None) -> str:
+    """One line: symbols = numbers = result with its unit, e.g. `V_Rd,max = … = 1 · 400 · … = 841.9 kN`.
+
+    `wrong` shows a slip's formula in place of the quantity's own; `values` then has its result.
+    """
     quantity = sheet.quantities[symbol]
+    formula = wrong or quantity.formula
     result = with_unit(float(values[symbol]), quantity.unit, 5)
-    if quantity.formula is None:
+    if formula is None:
         return f"{paper(symbol)} = {result}"
     namespace = scalar_namespace()
 
     def choose(test: ast.expr) -> bool:
         return bool(eval(scalar_code(test), {**namespace, **values}))
 
-    symbols = printed(quantity.formula.tree, paper, choose)
-    numbers = in_numbers(sheet, symbol, values)
+    symbols = printed(formula.tree, paper, choose)
+    numbers = in_numbers(sheet, symbol, values, wrong)
     if quantity.unit in INSIDE_UNIT:
         result = f"{number(float(values[symbol]), DIGITS)} {INSIDE_UNIT[quantity.unit]} = {result}"
     parts = [paper(symbol), symbols, numbers, result]

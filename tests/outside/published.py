@@ -137,18 +137,20 @@ def run_file(check: Check) -> list[str]:
 def run_steel(steel: Steel) -> list[str]:
     """The faults of a table of areas."""
     faults = _faults((expected, bar_area(count, diameter)) for count, diameter, expected in steel.bars)
-    return faults + _faults((expected, link_area(*links)) for *links, expected in steel.links)
+    return faults + _faults(
+        (expected, link_area(legs, diameter, spacing)) for legs, diameter, spacing, expected in steel.links
+    )
 
 
 def bar_area(count: int, diameter: float) -> float:
     """Area in mm2 that the tool measures for bars in the bottom of a wide beam."""
-    return measured(f"{{face: bottom, count: {count}, diameter: {diameter:g}}}")["A_s_all"]
+    return float(measured(f"{{face: bottom, count: {count}, diameter: {diameter:g}}}")["A_s_all"])
 
 
 def link_area(legs: int, diameter: float, spacing: float) -> float:
     """Area of all legs over the spacing in mm2/mm that the tool measures."""
     sets = f"{{mark: L, diameter: {diameter:g}, spacing: {spacing:g}, legs: {legs}, place: perimeter}}"
-    return measured("{face: bottom, count: 2, diameter: 12}", sets)["A_sw_s_all"]
+    return float(measured("{face: bottom, count: 2, diameter: 12}", sets)["A_sw_s_all"])
 
 
 def measured(
@@ -270,5 +272,6 @@ def _expected(item: Mapping[str, Any]) -> Expected:
     published = None if item["published"] == "undefined" else float(item["published"])
     if published is not None and not ("within" in item or "by" in item):
         raise ValueError(f"{item['symbol']}: needs an allowance, within or by")
-    numbers = (float(item.get(key, standard)) for key, standard in (("within", 0), ("by", 0), ("ratio", 1)))
-    return Expected(item["symbol"], published, item["unit"], *numbers, item.get("case"))
+    numbers = {"within": 0.0, "by": 0.0, "ratio": 1.0}
+    numbers |= {key: float(item[key]) for key in numbers if key in item}
+    return Expected(item["symbol"], published, item["unit"], **numbers, case=item.get("case"))

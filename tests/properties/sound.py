@@ -80,16 +80,19 @@ def _case_lines(name: str, case: SoundCase) -> Iterator[str]:
             yield f"      verdict: {case.verdict}"
 
 
-def sound_design(rng: Random, kind: str, exact: bool) -> Sound:
-    """One sound design; `exact` keeps all digits while working, else the designer goes on with printed numbers."""
+def sound_design(rng: Random, kind: str, exact: bool, finer: int = 0) -> Sound:
+    """One sound design; `exact` keeps all digits while working, else the designer goes on with printed numbers.
+
+    `finer` adds decimals to what is printed.
+    """
     while True:
         drawn = draw_member(rng, kind)
-        found = _attempt(rng, drawn, exact)
+        found = _attempt(rng, drawn, exact, finer)
         if found is not None:
             return found
 
 
-def _attempt(rng: Random, drawn: Drawn, exact: bool) -> Sound | None:
+def _attempt(rng: Random, drawn: Drawn, exact: bool, finer: int) -> Sound | None:
     m = drawn.member
     if sum(bar.area for bar in m.bars) > 0.039 * m.shape.A_c or not can_be_built(m):
         return None
@@ -108,7 +111,7 @@ def _attempt(rng: Random, drawn: Drawn, exact: bool) -> Sound | None:
         return None
     m = replace(m, spacing=spacing)
     cases, fixed = [], {"f_ywd", "nu_1"} if m.low_stress else set()
-    places = {symbol: rng.choice(options) for symbol, options in DECIMALS.items()}
+    places = {symbol: rng.choice(options) + finer for symbol, options in DECIMALS.items()}
     for plan in planned:
         case, sticky = _case(rng, m, plan, places, form, exact)
         cases.append(case)
@@ -152,7 +155,7 @@ def _plan(rng: Random, m: Member, pure: str, form: str) -> Plan | None:
     cot = min(1 / tan(radians(angle)), 2.5)
     if form == "cot_theta":
         cot = round(cot, 2)
-    z = None if N or rng.random() < 0.8 else floor(rng.choice((0.85 * c.d, max(0.9 * c.d, z_b))) * 10) / 10
+    z = None if N or rng.random() < 0.8 else float(floor(rng.choice((0.85 * c.d, max(0.9 * c.d, z_b)))))
     scaled = _scaled(rng, m, c, actions, force, cot, z or (z_b if N else 0.9 * c.d), pure)
     return None if scaled is None else Plan(scaled, cot, z)
 
@@ -241,8 +244,7 @@ def _case(
         del printed["crack_sum"]
     decimals = ANGLE_DECIMALS[form]
     value = f"{degrees(atan(1 / plan.cot)) if form == 'theta' else plan.cot:.{decimals}f}"
-    sides = ["_shear"] * (a.V > 0) + ["_torsion"] * (a.T > 0)
-    for side in rng.choice(([""], sides)):
+    for side in rng.choice(([""], ["_shear", "_torsion"] if a.V and a.T else [""])):
         printed[form + side] = value
     return SoundCase(a, printed), {"z"} if plan.z is not None else set()
 

@@ -1,7 +1,8 @@
-"""Declared designs of every kind for the tests of the engine, built from text as a designer would write it (all invented)."""
+"""Declared designs of every kind for the tests of the engine, as a designer would write them (all invented)."""
 
 from __future__ import annotations
 
+import random
 from collections.abc import Mapping
 from typing import Any
 
@@ -17,10 +18,12 @@ SECTIONS = {
     "box": "{shape: box, b: 900, h: 1200, walls: {side: 160, top: 180, bottom: 150}}",
     "circle": "{shape: circle, diameter: 800}",
     "polygon": "{shape: polygon, points: [[0, 0], [500, 0], [600, 800], [0, 900]]}",
-    "tee": "{shape: polygon, points: [[300, 0], [700, 0], [700, 600], [1000, 600], [1000, 800], [0, 800], [0, 600], [300, 600]]}",
+    "tee": "{shape: polygon, points: [[300, 0], [700, 0], [700, 600], [1000, 600], "
+    "[1000, 800], [0, 800], [0, 600], [300, 600]]}",
 }
 BARS = {
-    "rectangle": "[{face: bottom, bars: 4H25}, {face: top, bars: 3H20}, {face: left, bars: 2H12}, {face: right, bars: 2H12}]",
+    "rectangle": "[{face: bottom, bars: 4H25}, {face: top, bars: 3H20}, "
+    "{face: left, bars: 2H12}, {face: right, bars: 2H12}]",
     "box": "[{face: bottom, bars: 6H25}, {face: top, bars: 5H25}, {face: left, bars: 3H16}, {face: right, bars: 3H16}]",
     "circle": "[{face: round, bars: 12H25}]",
     "polygon": "[{face: corners, count: 4, diameter: 25}, {face: bottom, bars: 4H20}]",
@@ -64,7 +67,7 @@ def rows_of(design: Design) -> tuple[Engine, list[Mapping[str, Any]]]:
     compiled = engine_for(design, measured, Options())
     member = member_row(design, measured)
     inputs = frozenset((*compiled.scratch.inputs, *compiled.follow.inputs))
-    rows = []
+    rows: list[Mapping[str, Any]] = []
     for case in design.cases:
         claims = claims_of(case, measured)
         rows.append(case_row(member, case, claims, inputs))
@@ -75,3 +78,34 @@ def values_of(design: Design) -> list[tuple[Engine, dict[str, Any]]]:
     """For each case: the engine, and all inputs and recomputed values by symbol."""
     compiled, rows = rows_of(design)
     return [(compiled, {**row, **compiled.scratch.run(row)}) for row in rows]
+
+
+def random_section(shape: str, r: random.Random) -> dict[str, Any]:
+    """Section and bars of a shape with random sizes, as arguments of `design`."""
+    b, h = r.randint(350, 900), r.randint(450, 1200)
+    bars = "[{face: bottom, bars: %dH%d}, {face: top, bars: %dH16}, {face: left, bars: 2H12}, {face: right, bars: 2H12}]"
+    if shape == "rectangle":
+        return {
+            "section": f"{{shape: rectangle, b: {b}, h: {h}}}",
+            "bars": bars % (r.randint(2, 4), r.choice((16, 25)), 3),
+        }
+    if shape == "box":
+        walls = f"walls: {{side: {r.randint(130, 150)}, top: {r.randint(130, 150)}, bottom: {r.randint(130, 150)}}}"
+        return {"section": f"{{shape: box, b: {b + 250}, h: {h + 100}, {walls}}}", "bars": bars % (4, 20, 4)}
+    if shape == "circle":
+        return {
+            "section": f"{{shape: circle, diameter: {b + 100}}}",
+            "bars": f"[{{face: round, bars: {r.randint(6, 9)}H{r.choice((16, 20, 25))}}}]",
+        }
+    top, wide, thick = r.randint(0, 150), b + r.randint(150, 500), r.randint(140, 250)
+    left = (wide - b) // 2
+    if r.random() < 0.5:
+        points = f"[[0, 0], [{b}, 0], [{b + top}, {h}], [{-top}, {h}]]"
+    else:
+        points = (
+            f"[[{left}, 0], [{left + b}, 0], [{left + b}, {h - thick}], [{wide}, {h - thick}], [{wide}, {h}], [0, {h}], "
+            f"[0, {h - thick}], [{left}, {h - thick}]]"
+        )
+    corners = points.count("], [") + 1
+    bar = f"[{{face: corners, count: {corners if corners == 4 else 6}, diameter: 16}}, {{face: bottom, bars: 3H20}}]"
+    return {"section": f"{{shape: polygon, points: {points}}}", "bars": bar}

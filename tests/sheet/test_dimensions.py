@@ -20,7 +20,7 @@ from checker.review.engine import sheet_under
 from checker.sheet.load import load_layers, load_sheet
 from checker.sheet.quantities import Quantity, Sheet
 
-UNITS = pint.UnitRegistry()
+UNITS: Any = pint.UnitRegistry()
 PURE = UNITS.Quantity(1.0, "")
 SHEET_UNITS = {
     "-": "", "deg": "", "flag": "", "mm": "mm", "mm2": "mm**2", "mm3": "mm**3", "mm2/mm": "mm**2/mm",
@@ -45,15 +45,15 @@ EMPIRICAL = {
 EMPIRICAL_UK = EMPIRICAL | {"f_ck_shear"}
 
 
-class Clash(ValueError):
+class ClashError(ValueError):
     """A formula whose units don't go together."""
 
 
 def measure_of(node: ast.expr, symbols: dict[str, Any]) -> Any:
     """What a formula measures, as a pint quantity of size 1; ANY for a bare zero."""
     match node:
-        case ast.Constant(value=value):
-            return ANY if value == 0 else PURE
+        case ast.Constant(value=number):
+            return ANY if number == 0 else PURE
         case ast.Name(id=name):
             return symbols[name]
         case ast.UnaryOp(operand=operand):
@@ -72,17 +72,17 @@ def measure_of(node: ast.expr, symbols: dict[str, Any]) -> Any:
             return call(name, arguments, symbols)
         case ast.BinOp(left=left, op=operator, right=right):
             return binary(measure_of(left, symbols), operator, right, symbols)
-    raise Clash(ast.dump(node))
+    raise ClashError(ast.dump(node))
 
 
 def same(parts: list[Any]) -> Any:
     """What all parts measure alike."""
     known = [part for part in parts if part is not ANY]
     if any(isinstance(part, str) for part in known):
-        raise Clash("a section is not a number")
+        raise ClashError("a section is not a number")
     for part in known[1:]:
         if part.dimensionality != known[0].dimensionality:
-            raise Clash(f"{known[0].units} with {part.units}")
+            raise ClashError(f"{known[0].units} with {part.units}")
     return known[0] if known else ANY
 
 
@@ -119,7 +119,7 @@ def binary(left: Any, operator: ast.operator, right: ast.expr, symbols: dict[str
 
 
 def prove(sheet: Sheet, quantity: Quantity, text: str | None = None) -> None:
-    """Raise Clash unless the quantity's formula measures what its unit says."""
+    """Raise ClashError unless the quantity's formula measures what its unit says."""
     symbols = {
         symbol: SECTION if other.unit == "section" else UNITS.Quantity(1.0, SHEET_UNITS[other.unit])
         for symbol, other in sheet.quantities.items()
@@ -187,7 +187,7 @@ WRONG = {
 def test_a_wrong_formula_is_noticed(symbol: str) -> None:
     """By this proof, and by the product's own on a layer file."""
     sheet = load_sheet()
-    with pytest.raises(Clash):
+    with pytest.raises(ClashError):
         prove(sheet, sheet.quantities[symbol], WRONG[symbol])
 
 

@@ -28,7 +28,7 @@ FAULTS = {
     "unknown kind": ("      z: {kind: «guess}", "kind is one of"),
     "formula is a list": ("      z: {formula: «[0.9, d]}", "must be plain text"),
     "not arithmetic": ("      z: {formula: «d.real}", "Attribute is not arithmetic"),
-    "late in the formula": ("      z: {formula: 0.9 * «abs(d, h)}", "abs takes 1 to 1"),
+    "late in the formula": ("      z: {formula: 0.9 * «cosh(d)}", "unknown function 'cosh'"),
     "late in a quoted one": ('      z: {formula: "0.9 * «abs(d, h)"}', "abs takes 1 to 1"),
     "symbol with a dash": ("      «z-limit: {formula: d}", "is not a symbol"),
     "symbol that is a word of the language": (
