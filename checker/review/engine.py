@@ -106,14 +106,17 @@ def recompute(
 
 @lru_cache(maxsize=64)
 def sheet_under(standard: str, annex: str, layers: tuple[str, ...], office: Path | None = None) -> Sheet:
-    """The base sheet with the annex, the shape's layers and the office's layers over it, in this order."""
+    """The base sheet with the shape's layers, the annex and the office's layers over it, in this order.
+
+    The annex lies over the shape, so that what it says of a quantity holds for every section.
+    """
     sheet = load_sheet(standard)
     known = load_layers(shipped.folder("rules") / SHEET_FOLDER[standard] / LAYERS_FILE)
+    for layer in (known[name] for name in layers):
+        sheet = lay(sheet, layer)
     for layer in _outside_layers(annex):
         sheet = lay(sheet, layer)
         sheet.check_units(layer.entries)
-    for layer in (known[name] for name in layers):
-        sheet = lay(sheet, layer)
     if office is not None:
         for layer in load_layers(office, shown_as=office.name).values():
             sheet = lay(sheet, layer)

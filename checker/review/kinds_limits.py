@@ -29,12 +29,13 @@ LIMIT_TOLERANCE = 1e-6
 
 
 def at_limit(rule: Rule, subject: Subject) -> Outcome:
-    """Provided against a limit, both quantities of the sheet; the first provided that fails speaks."""
+    """Provided against a limit, both quantities of the sheet; a claim that stands for two of them speaks once."""
     case = subject.case
     if rule.declared and not any(symbol in case.case.declared for symbol in rule.declared):
         return ended(rule, subject, NOT_CHECKED, f"{symbol_text(rule.provided[0])} is not declared"), []
     limit = float(case.scratch[rule.limit])
     margins: list[float] = []
+    failed: dict[Place | None, Draft] = {}
     for symbol in rule.provided:
         value = float(case.row[symbol] if symbol in case.row else case.scratch[symbol])
         if not math.isfinite(value) and symbol in case.row and value != math.inf:
@@ -45,10 +46,11 @@ def at_limit(rule: Rule, subject: Subject) -> Outcome:
         if over > slack and claim is None:
             slack += case.read_rounding(symbol, rule.limit)
         if math.isnan(over) or over > slack:
-            return ended(rule, subject, FAIL, margin=_spare(over, limit)), [
-                _limit_draft(rule, subject, symbol, value, limit, claim)
-            ]
-        margins.append(_spare(over, limit) if limit else 0.0)
+            place = claim.source.place if claim else None
+            failed.setdefault(place, _limit_draft(rule, subject, symbol, value, limit, claim))
+        margins.append(_spare(over, limit))
+    if failed:
+        return ended(rule, subject, FAIL, margin=min(margins)), list(failed.values())
     if not margins:
         return ended(rule, subject, NOT_CHECKED, f"{symbol_text(rule.provided[0])} is not stated"), []
     return ended(rule, subject, PASS, margin=min(margins)), []

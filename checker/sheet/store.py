@@ -1,7 +1,7 @@
 """Compiled sheets kept between runs, so that a single audit doesn't read and compile every formula again.
 
-- A file in the user's cache folder, named by a digest of every rule file, this package's version and Python's; a
-  change in any of them makes another name, so nothing stale is ever used.
+- A file in the user's cache folder, named by a digest of every rule file, of the code that reads and compiles them, and
+  of Python's version; a change in any of them makes another name, so nothing stale is ever used.
 - Plain data and code objects only (`marshal`, as Python keeps its own compiled modules beside the source).
 - Where nothing can be written, or `SAMESTRUT_CACHE` is `off`, everything works as before, a little slower.
 """
@@ -23,8 +23,10 @@ KEPT_AT_MOST = 40  # files; older ones are swept when a new one is written
 
 def key_of(*parts: str) -> str:
     """The name under which something compiled from `parts` is kept."""
-    text = "\x1f".join((__version__, sys.version, *parts))
-    return hashlib.sha256(text.encode()).hexdigest()
+    digest = hashlib.sha256("\x1f".join((__version__, sys.version, *parts)).encode())
+    for path in sorted(Path(__file__).parent.glob("*.py")):
+        digest.update(path.read_bytes())
+    return digest.hexdigest()
 
 
 def recall(key: str) -> Any:

@@ -55,7 +55,7 @@ def test_a_shape_changes_exactly_what_it_says(shape: str) -> None:
     assert changed == set(SHAPES[shape].entries) - {
         s for s in SHAPES[shape].entries if base.get(s) == under[s]
     }
-    assert sheet_under(STANDARD, "uk", (shape,)).layers == ("uk", shape)
+    assert sheet_under(STANDARD, "uk", (shape,)).layers == (shape, "uk")
 
 
 UK = {
