@@ -26,6 +26,7 @@ from checker.review.evaluated import evaluate
 from checker.review.findings import INCOMPLETE, CaseResult, MemberResult, number_findings, outcome_of, worst
 from checker.review.judge import judge
 from checker.review.subject import Subject, subject_of
+from checker.review.window import reserves_of
 from checker.sheet.rulefile import rules_digest
 
 SUFFIXES = (".yaml", ".yml", ".json")
@@ -166,7 +167,7 @@ def _result(subject: Subject, compiled: Engine) -> CaseResult:
         and symbol not in ("unsaid", "one", "nothing")
     }
     units = {symbol: quantities[symbol].unit for symbol in shown}
-    return CaseResult(subject.case.case.name, shown, units, subject.window)
+    return CaseResult(subject.case.case.name, shown, units, subject.window, reserves_of(subject.case.scratch))
 
 
 def _expanded(items: Iterable[Item], faults: list[Fault]) -> Iterator[Item]:

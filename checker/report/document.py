@@ -12,7 +12,7 @@ from typing import TYPE_CHECKING, Any
 
 from checker.review.drafts import Check, Draft
 from checker.review.findings import CaseResult, Finding, MemberResult
-from checker.review.window import degrees_of
+from checker.review.window import Span, common_span, degrees_of
 from checker.sheet.shown import to_shown
 
 if TYPE_CHECKING:
@@ -53,6 +53,7 @@ def _member(member: MemberResult) -> dict[str, Any]:
         "findings": [_finding(finding, member.file) for finding in member.findings],
         "checks": [_check(check) for check in member.checks],
         "cases": [_case(case) for case in member.cases],
+        "window": _span(common_span(case.window for case in member.cases)),
     }
 
 
@@ -106,7 +107,6 @@ def _check(check: Check) -> dict[str, Any]:
 
 def _case(case: CaseResult) -> dict[str, Any]:
     window = case.window
-    spans = {name: degrees_of(getattr(window, name)) for name in ("links", "concrete", "bars", "admissible")}
     return {
         "case": case.case,
         "quantities": {
@@ -114,10 +114,23 @@ def _case(case: CaseResult) -> dict[str, Any]:
             for symbol, value in case.values.items()
         },
         "window": {
-            name: None if span is None else [_rounded(end) for end in span] for name, span in spans.items()
+            name: _span(getattr(window, name)) for name in ("links", "concrete", "bars", "admissible")
         },
         "holds": window.holds,
+        "reserve": {
+            name: {
+                "factor": _rounded(reserve.factor),
+                "theta": _rounded(math.degrees(math.atan2(1.0, reserve.cot))),
+                "governs": reserve.governs,
+            }
+            for name, reserve in zip(("used", "best"), case.reserve, strict=True)
+        },
     }
+
+
+def _span(span: Span | None) -> list[float | None] | None:
+    degrees = degrees_of(span)
+    return None if degrees is None else [_rounded(end) for end in degrees]
 
 
 def _shown(value: float | None, unit: str) -> float | None:

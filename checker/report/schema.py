@@ -104,11 +104,25 @@ class WindowModel(_Model):
     admissible: Span | None = Field(description="strut angles on which all hold together")
 
 
+class ReserveModel(_Model):
+    """How much all actions together could grow on a strut angle; null factor: without limit."""
+
+    factor: float | None
+    theta: Angle | None
+    governs: Literal["links", "concrete", "bars"]
+
+
+class ReservesModel(_Model):
+    used: ReserveModel
+    best: ReserveModel
+
+
 class CaseModel(_Model):
     case: str
     quantities: dict[str, QuantityModel]
     window: WindowModel
     holds: Literal["as claimed", "on another angle", "on no angle"]
+    reserve: ReservesModel
 
 
 class MemberModel(_Model):
@@ -119,6 +133,7 @@ class MemberModel(_Model):
     findings: list[FindingModel]
     checks: list[CheckModel]
     cases: list[CaseModel]
+    window: Span | None = Field(description="strut angles that hold in every case")
 
 
 class FaultModel(_Model):

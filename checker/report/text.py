@@ -6,13 +6,13 @@
 
 from __future__ import annotations
 
+import math
 import textwrap
-from collections.abc import Iterable
 from typing import TYPE_CHECKING
 
 from checker.review.drafts import CRASHED, FAIL, NOT_APPLICABLE, NOT_CHECKED, PASS
 from checker.review.findings import CaseResult, Finding, MemberResult
-from checker.review.window import degrees_of
+from checker.review.window import Span, common_span, degrees_of
 from checker.sheet.shown import number, paper, with_unit
 
 if TYPE_CHECKING:
@@ -74,17 +74,56 @@ def _member(member: MemberResult, *, workings: bool) -> str:
     return "\n\n".join(blocks)
 
 
-def _cases(cases: Iterable[CaseResult]) -> str:
+def _cases(cases: tuple[CaseResult, ...]) -> str:
     from tabulate import tabulate
 
-    rows = []
-    for case in cases:
-        span = degrees_of(case.window.admissible)
-        window = "none" if span is None else " to ".join(f"{number(end, 3)}°" for end in span)
-        rows.append([case.case, _action(case, "V_Ed"), _action(case, "T_Ed"), _action(case, "M_Ed"),
-                     _action(case, "N_Ed"), window, case.window.holds])  # fmt: skip
-    heads = ["case", "V_Ed", "T_Ed", "M_Ed", "N_Ed", "strut angles that hold", "as provided it holds"]
-    return str(tabulate(rows, heads, tablefmt="plain", disable_numparse=True))
+    rows = [
+        [
+            case.case,
+            *(_action(case, symbol) for symbol in ("V_Ed", "T_Ed", "M_Ed", "N_Ed")),
+            _angles(case.window.admissible),
+            case.window.holds,
+            _reserve(case),
+        ]
+        for case in cases
+    ]
+    heads = [
+        "case",
+        "V_Ed",
+        "T_Ed",
+        "M_Ed",
+        "N_Ed",
+        "strut angles\nthat hold",
+        "as provided\nit holds",
+        _GROWTH,
+    ]
+    table = str(tabulate(rows, heads, tablefmt="plain", disable_numparse=True))
+    if len(cases) > 1:
+        table += (
+            f"\nStrut angles that hold in every case: {_angles(common_span(case.window for case in cases))}"
+        )
+    return table
+
+
+_GROWTH = "actions may be scaled to\n(angle used / best)"
+
+
+def _angles(span: Span | None) -> str:
+    degrees = degrees_of(span)
+    if degrees is None:
+        return "none"
+    return " to ".join(dict.fromkeys(f"{number(end, 3)}°" for end in degrees))
+
+
+def _reserve(case: CaseResult) -> str:
+    """`1.12 (bars) / 1.31 at 33° (links)`: the factor on all actions, and what gives way first."""
+    used, best = case.reserve
+    if not math.isfinite(used.factor):
+        return "without limit"
+    angle = number(math.degrees(math.atan2(1.0, best.cot)), 3)
+    return (
+        f"{number(used.factor, 3)} ({used.governs}) / {number(best.factor, 3)} at {angle}° ({best.governs})"
+    )
 
 
 def _action(case: CaseResult, symbol: str) -> str:

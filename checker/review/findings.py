@@ -15,7 +15,7 @@ from typing import NamedTuple
 
 from checker.review.catalogue import GRAVITIES
 from checker.review.drafts import CRASHED, Check, Draft
-from checker.review.window import Window
+from checker.review.window import Reserve, Window
 
 ACCEPT, WITH_REMARKS, RETURN, INCOMPLETE = "accept", "accept with remarks", "return", "incomplete"
 EXIT_CODES = {ACCEPT: 0, WITH_REMARKS: 0, RETURN: 1, INCOMPLETE: 3}
@@ -31,12 +31,13 @@ class Finding(NamedTuple):
 
 
 class CaseResult(NamedTuple):
-    """What was recomputed for one case: symbol -> inside value (shown quantities only), and the strut window."""
+    """What was recomputed for one case: values worth showing (inside units), window, reserve as used and at best."""
 
     case: str
     values: Mapping[str, float]
     units: Mapping[str, str]
     window: Window
+    reserve: tuple[Reserve, Reserve]
 
 
 class MemberResult(NamedTuple):

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from typing import Any, NamedTuple
 
 AS_CLAIMED, OTHER_ANGLE, NO_ANGLE = "as claimed", "on another angle", "on no angle"
@@ -24,6 +24,36 @@ class Window(NamedTuple):
     bars: Span | None
     admissible: Span | None
     holds: str
+
+
+class Reserve(NamedTuple):
+    """How much all actions together could grow on a strut angle, and what gives way first."""
+
+    factor: float
+    cot: float
+    governs: str
+
+
+def reserves_of(values: Mapping[str, Any]) -> tuple[Reserve, Reserve]:
+    """The reserve on the angle used and on the best angle; `factor` is inf where nothing limits it."""
+
+    def reserve(which: str, cot: str) -> Reserve:
+        parts = {part: float(values[f"reserve_{part}_{which}"]) for part in ("links", "concrete", "bars")}
+        governs = min(parts, key=lambda part: parts[part] if math.isfinite(parts[part]) else -1.0)
+        factor = parts[governs]
+        return Reserve(math.inf if factor >= FAR else factor, float(values[cot]), governs)
+
+    return reserve("used", "cot_used"), reserve("best", "cot_reserve")
+
+
+def common_span(windows: Iterable[Window]) -> Span | None:
+    """The strut angles (as cot θ) that hold in every case."""
+    low, high = 0.0, math.inf
+    for window in windows:
+        if window.admissible is None:
+            return None
+        low, high = max(low, window.admissible[0]), min(high, window.admissible[1])
+    return (low, high) if low <= high * (1 + CLOSE) else None
 
 
 def window_of(values: Mapping[str, Any]) -> Window:

@@ -15,7 +15,7 @@ from checker.declared.build import load_text
 from tests.properties.members import SHAPES
 from tests.properties.sound import DECIMALS, sound_design
 
-DESIGNS = 750
+DESIGNS = 500
 """Of each shape."""
 
 
