@@ -99,6 +99,13 @@ def _parser() -> argparse.ArgumentParser:
     sheet.add_argument("--shape", choices=("rectangle", "box", "circle", "polygon"), default="rectangle")
     sheet.set_defaults(run=_sheet)
 
+    slips = commands.add_parser(
+        "slips", help="list the classical mistakes that are recognised, or explain one"
+    )
+    slips.add_argument("id", nargs="?", metavar="ID")
+    slips.add_argument("--rules", metavar="FILE", help="an office's own slips, laid over the shipped ones")
+    slips.set_defaults(run=_slips)
+
     schema = commands.add_parser("schema", help="print the JSON Schema of a file this tool reads or writes")
     schema.add_argument("name", choices=SCHEMAS, metavar="NAME", help=", ".join(SCHEMAS))
     schema.set_defaults(run=_schema)
@@ -197,6 +204,20 @@ def _sheet(options: argparse.Namespace) -> int:
     if options.symbol not in sheet.quantities:
         raise UsageError(_unknown("symbol", options.symbol, sheet.quantities))
     sys.stdout.write(quantity_text(sheet, options.symbol))
+    return 0
+
+
+def _slips(options: argparse.Namespace) -> int:
+    from checker.report.catalogue_text import slip_list, slip_text
+    from checker.review.slips import load_slips
+
+    slips = {slip.id: slip for slip in load_slips(Path(options.rules) if options.rules else None).slips}
+    if options.id is None:
+        sys.stdout.write(slip_list(slips.values()))
+        return 0
+    if options.id not in slips:
+        raise UsageError(_unknown("slip", options.id, slips))
+    sys.stdout.write(slip_text(slips[options.id]))
     return 0
 
 

@@ -4,9 +4,11 @@ from __future__ import annotations
 
 import re
 import textwrap
+from collections.abc import Iterable
 
 from checker import shipped
 from checker.review.catalogue import BY_WINDOW, Catalogue, Rule
+from checker.review.slips import Slip
 from checker.sheet.quantities import Quantity, Sheet
 from checker.sheet.shown import paper
 from checker.sheet.workings import in_symbols
@@ -130,6 +132,25 @@ def quantity_text(sheet: Sheet, symbol: str) -> str:
         ("stands in", f"{quantity.source.file}:{quantity.source.line}"),
         ("layers on", ", ".join(sheet.layers)),
     ]
+    return _table(rows)
+
+
+def slip_list(slips: Iterable[Slip]) -> str:
+    """Every slip: id, the quantities it replaces, what it says."""
+    from tabulate import tabulate
+
+    rows = [[slip.id, ", ".join(slip.replaces), slip.says] for slip in slips]
+    return str(tabulate(rows, ["slip", "in", "a number is wrong because"], tablefmt="plain")) + "\n"
+
+
+def slip_text(slip: Slip) -> str:
+    """One slip: what it says, the wrong formula of each quantity it replaces, how common it is taken to be."""
+    rows = [
+        ("slip", slip.id),
+        ("what happened", slip.says),
+        ("weight", f"{slip.weight:g} (orders slips that fit equally)"),
+    ]
+    rows += [("wrong formula", f"{symbol} = {formula.text}") for symbol, formula in slip.replaces.items()]
     return _table(rows)
 
 

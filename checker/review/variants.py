@@ -69,7 +69,11 @@ def _link_misreadings(links: LinkSet) -> Iterator[tuple[str, str, LinkSet]]:
             yield "link-spacing-misread", says, links._replace(spacing=_with(links.spacing, spacing))
     for legs in (links.legs - 1, links.legs + 1, links.legs + 2):
         if legs > 0:
-            yield "link-legs-miscounted", f"{links.mark} was counted with {legs} legs", links._replace(legs=legs)
+            yield (
+                "link-legs-miscounted",
+                f"{links.mark} was counted with {legs} legs",
+                links._replace(legs=legs),
+            )
 
 
 def _bar_misreadings(group: BarGroup) -> Iterator[tuple[str, str, BarGroup]]:
@@ -80,7 +84,11 @@ def _bar_misreadings(group: BarGroup) -> Iterator[tuple[str, str, BarGroup]]:
         return
     for count in (group.count - 1, group.count + 1):
         if count > 0:
-            yield "bars-miscounted", f"{group.mark} was counted with {count} bars", replace(group, count=count)
+            yield (
+                "bars-miscounted",
+                f"{group.mark} was counted with {count} bars",
+                replace(group, count=count),
+            )
 
 
 def _neighbours(size: float) -> tuple[float, ...]:

@@ -95,6 +95,16 @@ def test_every_rule_can_be_explained(capsys):
     assert len(capsys.readouterr().out.splitlines()) == len(load_catalogue().rules) + 1
 
 
+def test_every_slip_can_be_shown(capsys):
+    from checker.review.slips import load_slips
+
+    for slip in load_slips().slips:
+        assert main(["slips", slip.id]) == 0
+        assert slip.says.split()[0] in capsys.readouterr().out
+    assert main(["slips"]) == 0
+    assert len(capsys.readouterr().out.splitlines()) == len(load_slips().slips) + 1
+
+
 def test_every_quantity_can_be_shown(capsys):
     for symbol in sheet_under("EN 1992-1-1:2004", "recommended", ("rectangle",)).quantities:
         assert main(["sheet", symbol]) == 0

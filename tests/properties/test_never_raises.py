@@ -101,7 +101,9 @@ def test_no_check_crashes(tree):
     design = read(tree)
     assume(design is not None)
     report = audit(design)
-    crashed = [f"{check.rule}: {check.why}" for check in report.members[0].checks if check.status == "crashed"]
+    crashed = [
+        f"{check.rule}: {check.why}" for check in report.members[0].checks if check.status == "crashed"
+    ]
     assert not crashed, "\n".join(crashed) + "\n" + yaml.safe_dump(tree, sort_keys=False)
     assert report.outcome in ("accept", "accept with remarks", "return")
     assert report.text()

@@ -63,7 +63,11 @@ def changed_values(design: Sound, number: int, symbol: str) -> list[float]:
     for factor, side in ((2.2, 1), (0.45, -1)):
         drafts = findings_on(design, number, symbol, written(value * factor, text))
         for draft in drafts:
-            if draft.rule.startswith("agrees.") and draft.tolerance is not None and draft.recomputed is not None:
+            if (
+                draft.rule.startswith("agrees.")
+                and draft.tolerance is not None
+                and draft.recomputed is not None
+            ):
                 values.append((draft.recomputed + side * BEYOND * draft.tolerance) / unit)
     return values
 

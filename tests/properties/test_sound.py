@@ -46,7 +46,9 @@ def test_a_sound_design_is_accepted_whatever_of_it_is_declared(kind):
         rng = Random(f"part of {kind} {seed}")
         design = sound_design(rng, kind, exact=True)
         for case in design.cases:
-            case.declared = {s: v for s, v in case.declared.items() if s in design.fixed or rng.random() < 0.5}
+            case.declared = {
+                s: v for s, v in case.declared.items() if s in design.fixed or rng.random() < 0.5
+            }
             case.verdict = rng.choice(("adequate", ""))
         assert_accepted(design.text(), seed)
 
