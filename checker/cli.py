@@ -9,6 +9,7 @@ from __future__ import annotations
 
 import argparse
 import gc
+import io
 import os
 import re
 import sys
@@ -27,6 +28,9 @@ def main(arguments: Sequence[str] | None = None) -> int:
     gc.set_threshold(
         50_000
     )  # a short run makes little garbage; looking for it often costs a fifth of the time
+    for stream in (sys.stdout, sys.stderr):  # a terminal that can't show θ still gets the rest
+        if isinstance(stream, io.TextIOWrapper):
+            stream.reconfigure(errors="replace")
     options = _parser().parse_args(arguments)
     try:
         code: int = options.run(options)

@@ -149,6 +149,15 @@ def test_module_and_pipe_and_no_colour():
     assert piped.stderr == ""
 
 
+def test_a_terminal_without_greek_letters():
+    done = subprocess.run(
+        [sys.executable, "-m", "checker", "audit", FLAWED], cwd=ROOT, capture_output=True, check=False,
+        env={**os.environ, "PYTHONIOENCODING": "ascii"},
+    )  # fmt: skip
+    assert done.returncode == 1
+    assert b"RETURN" in done.stdout
+
+
 def test_one_audit_loads_nothing_heavy():
     """A single file pays for the standard library, PyYAML and tabulate, and for nothing else."""
     code = (
