@@ -25,6 +25,9 @@ BESIDE: dict[str, dict[str, str]] = {
         "links.spacing-perimeter": "links that aren't there have no spacing that could be near enough",
         "links.spacing-least-dimension": "links that aren't there have no spacing that could be near enough",
     },
+    "box.side-wall-crushing": {
+        "strut.crushing": "the sum over the whole box takes the thinnest wall, so it is never below a side wall's",
+    },
 }
 """Rule -> other rules that fail with it unavoidably -> why."""
 
