@@ -100,7 +100,9 @@ def _parser() -> argparse.ArgumentParser:
     sheet = commands.add_parser("sheet", help="list the formulas, or show one")
     sheet.add_argument("symbol", nargs="?", metavar="SYMBOL")
     sheet.add_argument("--annex", metavar="NAME|FILE", default="recommended")
-    sheet.add_argument("--shape", choices=("rectangle", "box", "circle", "polygon"), default="rectangle")
+    shapes = ("rectangle", "box", "circle", "polygon", "tee", "ell", "i")
+    sheet.add_argument("--shape", choices=shapes, default="rectangle")
+    sheet.add_argument("--parts", action="store_true", help="web and flanges share the torsion")
     sheet.set_defaults(run=_sheet)
 
     slips = commands.add_parser(
@@ -201,7 +203,9 @@ def _sheet(options: argparse.Namespace) -> int:
     from checker.review.engine import shape_layers, sheet_under
 
     standard = "EN 1992-1-1:2004"
-    sheet = sheet_under(standard, options.annex, shape_layers(options.shape, aslant=False))
+    sheet = sheet_under(
+        standard, options.annex, shape_layers(options.shape, aslant=False, parts=options.parts)
+    )
     if options.symbol is None:
         sys.stdout.write(quantity_list(sheet))
         return 0

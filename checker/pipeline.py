@@ -130,7 +130,8 @@ def engine_for(design: Design, measured: Measured, options: Options) -> Engine:
     aslant = (
         abs(measured.inputs["S_sin"] - measured.inputs["A_sw_s_all"]) > 1e-9 * measured.inputs["A_sw_s_all"]
     )
-    layers = shape_layers(measured.shape, aslant=aslant or measured.inputs["S_cos"] > 1e-9)
+    aslant = aslant or measured.inputs["S_cos"] > 1e-9
+    layers = shape_layers(measured.shape, aslant=aslant, parts=measured.inputs["torsion_parts"] > 0)
     return engine(design.standard, _annex_of(design, options), layers, options.rules)
 
 

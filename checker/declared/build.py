@@ -48,14 +48,14 @@ def load_text(text: str | bytes, file: str) -> Design:
 
 def _design(values: Values, file: str, sha256: str, faults: Faults) -> Design | None:
     """The design, or None after noting what doesn't hold together; parts that are sound are still checked."""
-    section = build_section(values.get("section", Values), faults)
+    section = build_section(values.get("section", Values), values.get("spans", Values), faults)
     materials = build_materials(values.get("materials", Values))
     sets: list[Values] = values.get("links", list) or []
     groups: list[Values] = values.get("bars", list) or []
     cases: list[Values] = values.get("cases", list) or []
     links = build_links(sets, faults)
     bars = build_bars(groups, None if section is None else corners_of(section), faults)
-    built_cases = build_cases(cases, values.get("declared", Values), faults)
+    built_cases = build_cases(cases, values.get("declared", Values), section, faults)
     cover = values.get("cover", Number)
     if (
         section is not None

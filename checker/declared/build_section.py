@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from checker.declared.fit import Point, crossing, extents, signed_area
+from checker.declared.flanges import FLANGED, flanged_sizes, outline_points
 from checker.declared.format import MAX_SIZE
 from checker.declared.found import Faults, Values
 from checker.declared.model import Materials, Number, Place, Section
@@ -10,8 +11,8 @@ from checker.declared.model import Materials, Number, Place, Section
 _MIN_SIZE = 10.0  # mm, as for the sizes of the other shapes
 
 
-def build_section(values: Values | None, faults: Faults) -> Section | None:
-    """The section, or None after noting why it is none."""
+def build_section(values: Values | None, spans: Values | None, faults: Faults) -> Section | None:
+    """The section with the spans its flanges act over, or None after noting why it is none."""
     if values is None or not values.sound:
         return None
     shape = values.need("shape", str)
@@ -20,12 +21,47 @@ def build_section(values: Values | None, faults: Faults) -> Section | None:
         return None if points is None else Section(shape, {}, points, values.place)
     if shape == "circle":
         return Section(shape, {"diameter": values.need("diameter", Number)}, (), values.place)
+    if shape in FLANGED:
+        return _flanged(shape, values, spans, faults)
     sizes = {key: values.need(key, Number) for key in ("b", "h")}
     if shape == "box":
         sizes |= _walls(values)
         if not _leaves_void(sizes, values, faults):
             return None
     return Section(shape, sizes, (), values.place)
+
+
+def _flanged(shape: str, values: Values, spans: Values | None, faults: Faults) -> Section | None:
+    """A tee, ell or i whose flanges stand out from the web and leave some of it between them."""
+    keys = ("b_f", "h_f", *(("b_f_bottom", "h_f_bottom") if shape == "i" else ()))
+    sizes = {"b_web": values.need("b_w", Number), "h": values.need("h", Number)}
+    sizes |= {key: values.need(key, Number) for key in keys}
+    section = Section(
+        shape,
+        sizes,
+        (),
+        values.place,
+        flange=values.get("flange", str) or "top",
+        side=(values.get("side", str) or "right") if shape == "ell" else "both",
+        torsion_by=values.get("torsion_by", str) or "web",
+        spans=_spans(spans),
+    )
+    before = len(faults.found)
+    for key in keys[::2]:
+        if sizes[key].value <= sizes["b_web"].value:
+            faults.add(values.spot(key), f"{key} counts the web in; expected more than b_w")
+    if sum(sizes[key].value for key in keys[1::2]) >= sizes["h"].value:
+        faults.add(values.spot(keys[1]), "the flange leaves no web; expected a thickness below the height h")
+    if len(faults.found) > before:
+        return None
+    return section._replace(points=outline_points(flanged_sizes(section)))
+
+
+def _spans(spans: Values | None) -> dict[str, Number]:
+    if spans is None or not spans.sound:
+        return {}
+    found = {key: spans.get(key, Number) for key in ("l_0", "b_1", "b_2")}
+    return {key: number for key, number in found.items() if number is not None}
 
 
 def build_materials(values: Values | None) -> Materials | None:

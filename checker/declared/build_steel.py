@@ -5,8 +5,9 @@ from __future__ import annotations
 import math
 from itertools import count
 
+from checker.declared.flanges import FLANGED
 from checker.declared.found import Faults, Values
-from checker.declared.model import BarGroup, Case, DeclaredValue, LinkSet, Number, Place
+from checker.declared.model import BarGroup, Case, DeclaredValue, LinkSet, Number, Place, Section, WebFlange
 from checker.declared.symbols import DECLARABLE, STRUT_ANGLES
 from checker.declared.tree import shorten
 
@@ -25,9 +26,10 @@ def build_links(sets: list[Values], faults: Faults) -> list[LinkSet]:
         else:
             diameter, spacing = values.need("diameter", Number), values.need("spacing", Number)
         where, legs = values.get("place", str) or "perimeter", values.need("legs", int)
-        if where == "perimeter" and legs < 2:
+        if where != "inner" and legs < 2:
+            encloses = "section" if where == "perimeter" else "flange"
             faults.add(
-                values.spot("legs"), f"a perimeter link encloses the section with 2 legs or more, not {legs}"
+                values.spot("legs"), f"a {where} link encloses the {encloses} with 2 legs or more, not {legs}"
             )
             continue
         angle = values.get("angle", Number)
@@ -62,8 +64,10 @@ def build_bars(groups: list[Values], corners: int | None, faults: Faults) -> lis
     return bars
 
 
-def build_cases(cases: list[Values], shared: Values | None, faults: Faults) -> list[Case]:
-    """The load cases that are sound, the member's declared values merged in."""
+def build_cases(
+    cases: list[Values], shared: Values | None, section: Section | None, faults: Faults
+) -> list[Case]:
+    """The load cases that are sound, the member's declared values merged in; `section` is None where unsound."""
     member = {s: value._replace(member_wide=True) for s, value in _declared(shared, faults).items()}
     built: list[Case] = []
     first: dict[str, Place] = {}
@@ -86,9 +90,29 @@ def build_cases(cases: list[Values], shared: Values | None, faults: Faults) -> l
                 declared=_merged(member, own),
                 verdict=verdict,
                 place=values.place,
+                web_flange=_web_flange(values.get("web_flange", Values), section, faults),
             )
         )
     return built
+
+
+def _web_flange(values: Values | None, section: Section | None, faults: Faults) -> WebFlange | None:
+    """The shear between the web and one of the section's flanges; the top one of an i where it is unsaid."""
+    if values is None or section is None:
+        return None
+    if section.shape not in FLANGED:
+        faults.add(values.place, f"web_flange is for sections with flanges, not for a {section.shape}")
+        return None
+    flange = values.get("flange", str) or section.flange
+    if section.shape != "i" and flange != section.flange:
+        faults.add(values.spot("flange"), f"this section has no {flange} flange")
+    return WebFlange(
+        dF=values.need("dF", Number),
+        dx=values.need("dx", Number),
+        A_sf_s=values.get("A_sf_s", Number),
+        cot_theta_f=values.get("cot_theta_f", Number),
+        at_top=flange == "top",
+    )
 
 
 def _bar_group(values: Values, mark: str, corners: int | None, faults: Faults) -> BarGroup | None:

@@ -3,75 +3,14 @@
 from __future__ import annotations
 
 from checker.declared.fields import Field, Form, Record
+from checker.declared.shapes_format import MAX_SIZE, SHAPES, SPANS, WALLS
 from checker.declared.symbols import DECLARABLE, LINK_AREAS, MEANINGS, STRUT_ANGLES
+
+__all__ = ["FORMAT", "MAX_SIZE", "ONLY_STANDARD", "RECORDS", "SHAPES", "STANDARD", "VERDICTS"]
 
 STANDARD = "EN 1992-1-1:2004"
 ONLY_STANDARD = f"samestrut judges {STANDARD} only"
 VERDICTS = ("adequate", "not adequate")
-MAX_SIZE = 100_000.0  # mm; a section of 100 m is a slip of the keyboard
-
-
-def _size(key: str, doc: str, least: float = 10, most: float = MAX_SIZE) -> Field:
-    return Field(key, "number", doc, required=True, unit="mm", least=least, most=most)
-
-
-_SHAPE = Field(
-    "shape",
-    "choice",
-    "Shape of the cross-section.",
-    required=True,
-    choices=("rectangle", "box", "circle", "polygon"),
-    refused=dict.fromkeys(
-        ("tee", "ell"),
-        "tee and ell sections are not read yet; give the outline as a polygon (points: [[x, y], ...])",
-    ),
-)
-_B = _size("b", "Width.")
-_H = _size("h", "Height.")
-
-SHAPES: dict[str, Record] = {
-    "rectangle": Record("rectangle", "A solid rectangle.", (_SHAPE, _B, _H)),
-    "box": Record(
-        "box",
-        "A rectangle with one rectangular void.",
-        (
-            _SHAPE,
-            _B,
-            _H,
-            Field("wall", "number", "Thickness of all four walls.", unit="mm", least=10, most=MAX_SIZE),
-            Field("walls", "record", "Thickness of the walls, each on its own.", record="walls"),
-        ),
-        (Form(("wall",)), Form(("walls",))),
-    ),
-    "circle": Record("circle", "A solid circle.", (_SHAPE, _size("diameter", "Diameter."))),
-    "polygon": Record(
-        "polygon",
-        "Any outline of straight edges that doesn't cross itself, without voids.",
-        (
-            _SHAPE,
-            Field(
-                "points",
-                "points",
-                "Corners in order, [x, y]; x to the right, y up.",
-                required=True,
-                unit="mm",
-                least=3,
-                most=200,
-            ),
-        ),
-    ),
-}
-"""The record of each shape a section can have."""
-
-_WALLS = Record(
-    "walls",
-    "Wall thicknesses of a box.",
-    (
-        _size("side", "Thickness of each side wall."),
-        _size("top", "Thickness of the top wall."),
-        _size("bottom", "Thickness of the bottom wall."),
-    ),
-)
 
 _MATERIALS = Record(
     "materials",
@@ -107,8 +46,9 @@ _LINKS = Record(
         Field(
             "place",
             "choice",
-            "perimeter: the outer link that encloses the section (if left out); inner: within it.",
-            choices=("perimeter", "inner"),
+            "perimeter: the outer link that encloses the section, of a tee, ell or i the web (if left out); "
+            "inner: within it; flange: in each flange outstand, for the flange's own torsion.",
+            choices=("perimeter", "inner", "flange"),
         ),
         Field(
             "ends",
@@ -190,6 +130,24 @@ _LINK_AREA = Record(
     ),
 )
 
+_WEB_FLANGE = Record(
+    "web_flange",
+    "Shear between web and flange: how the force in one outstand changes along the member.",
+    (
+        Field("dF", "number", "Change of the force in one outstand.", True, "kN", least=0),
+        Field("dx", "number", "Length over which it changes.", True, "mm", least=1, most=1_000_000),
+        Field("A_sf_s", "number", "Bars across the junction over their spacing.", False, "mm2/mm", least=0),
+        Field("flange", "choice", "Which flange of an i; top if left out.", choices=("top", "bottom")),
+        Field(
+            "cot_theta_f",
+            "number",
+            "Cotangent of the strut angle in the flange the designer chose.",
+            least=1,
+            most=2,
+        ),
+    ),
+)
+
 _CASE = Record(
     "case",
     "One load case.",
@@ -206,6 +164,7 @@ _CASE = Record(
             False,
             "kNm",
         ),
+        Field("web_flange", "record", _WEB_FLANGE.doc, record="web_flange"),
         Field("declared", "record", "Numbers for this case; they win over the member's.", record="declared"),
     ),
 )
@@ -240,6 +199,7 @@ FORMAT = Record(
             choices=("equilibrium", "compatibility"),
         ),
         Field("section", "section", "The cross-section.", required=True),
+        Field("spans", "record", SPANS.doc, record="spans"),
         Field("materials", "record", _MATERIALS.doc, required=True, record="materials"),
         Field(
             "cover",
@@ -260,6 +220,17 @@ FORMAT = Record(
 
 RECORDS: dict[str, Record] = {
     record.name: record
-    for record in (_WALLS, _MATERIALS, _LINKS, _BARS, _DECLARED, _LINK_AREA, _CASE, _SUBMISSION)
+    for record in (
+        WALLS,
+        SPANS,
+        _MATERIALS,
+        _LINKS,
+        _BARS,
+        _DECLARED,
+        _LINK_AREA,
+        _WEB_FLANGE,
+        _CASE,
+        _SUBMISSION,
+    )
 }
 """Every record a field can name."""

@@ -47,15 +47,23 @@ class Number(NamedTuple):
 class Section(NamedTuple):
     """The outline of the cross-section.
 
-    - `shape` is "rectangle", "box", "circle" or "polygon".
-    - `sizes` has b and h (rectangle, box; a box also wall_side, wall_top, wall_bottom) or diameter (circle).
-    - `points` are the polygon's corners in mm, anticlockwise, in its own coordinates; empty otherwise.
+    - `shape` is "rectangle", "box", "circle", "polygon", "tee", "ell" or "i".
+    - `sizes` has b and h (rectangle, box; a box also wall_side, wall_top, wall_bottom) or diameter (circle);
+      a tee, ell or i has b_web, h, b_f and h_f, an i also b_f_bottom and h_f_bottom.
+    - `points` are the polygon's corners in mm, anticlockwise, in its own coordinates; a tee's, ell's or i's
+      from the lower left of its bounding box; empty otherwise.
+    - `flange` (top or bottom), `side` (both, left or right) and `torsion_by` (web or parts) are for tee, ell and i;
+      so are `spans`: l_0, b_1, b_2 where the file gives them.
     """
 
     shape: str
     sizes: Mapping[str, Number]
     points: tuple[tuple[float, float], ...] = ()
     place: Place = NOWHERE
+    flange: str = "top"
+    side: str = "both"
+    torsion_by: str = "web"
+    spans: Mapping[str, Number] = {}
 
 
 class Materials(NamedTuple):
@@ -70,7 +78,7 @@ class Materials(NamedTuple):
 
 
 class LinkSet(NamedTuple):
-    """One set of links: `where` is "perimeter" or "inner"; `angle` to the member axis in rad.
+    """One set of links: `where` is "perimeter", "inner" or "flange"; `angle` to the member axis in rad.
 
     - `ends` is hooks_135, hooks_90, lapped, welded or open; None where it is unsaid.
     - `lap` is the lap length, `tail` the straight length after a hook, both in mm.
@@ -119,6 +127,19 @@ class DeclaredValue(NamedTuple):
     member_wide: bool = False
 
 
+class WebFlange(NamedTuple):
+    """Shear between web and flange: change of force in N over a length in mm, bars across in mm2/mm.
+
+    `at_top` tells which flange; `cot_theta_f` is the designer's strut angle in it.
+    """
+
+    dF: Number
+    dx: Number
+    A_sf_s: Number | None
+    cot_theta_f: Number | None
+    at_top: bool
+
+
 class Case(NamedTuple):
     """One load case with the numbers declared for it.
 
@@ -136,6 +157,7 @@ class Case(NamedTuple):
     declared: Mapping[str, DeclaredValue] = {}
     verdict: tuple[str, Place] | None = None
     place: Place = NOWHERE
+    web_flange: WebFlange | None = None
 
 
 class Design(NamedTuple):

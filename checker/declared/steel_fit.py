@@ -18,6 +18,7 @@ from checker.declared.fit import (
     inside,
     perimeter_inset,
 )
+from checker.declared.flanges import FLANGED
 from checker.declared.model import BarGroup, LinkSet, Number, Place, Section
 
 FLAT_FACES = ("bottom", "top", "left", "right")
@@ -27,7 +28,7 @@ Found = Iterator[tuple[Place, str]]
 
 def outline_of(section: Section) -> tuple[Point, ...]:
     """The outer corners in mm, anticlockwise from the lower left; none for a circle."""
-    if section.shape == "polygon":
+    if section.shape == "polygon" or section.shape in FLANGED:
         return section.points
     if section.shape == "circle":
         return ()
@@ -37,15 +38,23 @@ def outline_of(section: Section) -> tuple[Point, ...]:
 
 def corners_of(section: Section) -> int:
     """How many corners take a bar: 4 of a rectangle, none of a circle, those turning outward of a polygon."""
-    outline = outline_of(section)
+    outline = linked_outline(section)
     return convex_corners(outline) if outline else 0
 
 
+def linked_outline(section: Section) -> tuple[Point, ...]:
+    """The outline in mm that the perimeter link follows: of a tee, ell or i the web alone."""
+    if section.shape not in FLANGED:
+        return outline_of(section)
+    b, h = section.sizes["b_web"].value, section.sizes["h"].value
+    return ((0.0, 0.0), (b, 0.0), (b, h), (0.0, h))
+
+
 def width_and_height(section: Section) -> tuple[float, float]:
-    """Width and height in mm of the bounding box."""
+    """Width and height in mm of the bounding box of what the perimeter link follows."""
     if section.shape == "circle":
         return (section.sizes["diameter"].value,) * 2
-    return extents(outline_of(section))
+    return extents(linked_outline(section))
 
 
 def link_faults(section: Section, cover: Number, links: list[LinkSet]) -> Found:
@@ -53,6 +62,9 @@ def link_faults(section: Section, cover: Number, links: list[LinkSet]) -> Found:
     width, height = width_and_height(section)
     for item in links:
         used = cover.value + item.diameter.value
+        if item.where == "flange":
+            yield from _flange_link_faults(section, item, used)
+            continue
         steel = f"cover {cover.value:g} and link {item.diameter.value:g} mm"
         if 2 * used >= min(width, height) - _SLACK:
             size = f"{width:g} x {height:g} mm"
@@ -66,6 +78,19 @@ def link_faults(section: Section, cover: Number, links: list[LinkSet]) -> Found:
             wall = min(section.sizes[key].value for key in ("wall_side", "wall_top", "wall_bottom"))
             if used > wall + _SLACK:
                 yield item.place, f"{item.mark}: {steel} reach through a wall of {wall:g} mm"
+
+
+def _flange_link_faults(section: Section, item: LinkSet, used: float) -> Found:
+    if section.shape not in FLANGED:
+        yield (
+            item.place,
+            f"{item.mark}: place: flange is for sections with flanges, not for a {section.shape}",
+        )
+        return
+    least = min(section.sizes[key].value for key in ("h_f", "h_f_bottom") if key in section.sizes)
+    if 2 * used >= least - _SLACK:
+        said = f"cover and link take {used:g} mm on both sides of a flange of {least:g} mm"
+        yield item.place, f"{item.mark}: {said}"
 
 
 def bar_faults(
@@ -139,7 +164,7 @@ def _crowded_round(section: Section, group: BarGroup, inset: float) -> str:
         apart = 2 * radius * math.sin(math.pi / group.count) if group.count > 1 else math.inf
         fits = apart >= phi - _SLACK
     else:
-        fits = group.count * phi <= perimeter_inset(outline_of(section), inset + phi / 2) + _SLACK
+        fits = group.count * phi <= perimeter_inset(linked_outline(section), inset + phi / 2) + _SLACK
     return "" if fits else f"{group.count} bars of {phi:g} mm don't fit side by side along the link"
 
 

@@ -3,7 +3,8 @@
 - `ok` is True, False, or None where the file leaves unsaid what would settle it.
 - A fact that has nothing to be about (no hook, no corner) has `ok` None and `applies` False: it is never a
   pass.
-- Torsion counts on perimeter links alone, so only these are judged (EN 1992-1-1, 9.2.3(1), 8.5, 9.2.3(4)).
+- Torsion counts on perimeter links, and on those of flanges that share it, so only these are judged
+  (EN 1992-1-1, 9.2.3(1), 8.5, 9.2.3(4)).
 """
 
 from __future__ import annotations
@@ -48,6 +49,8 @@ def link_facts(design: Design) -> dict[str, Fact]:
         facts = {name: Fact(None, none, place, applies=False) for name in _JUDGES}
         return {"perimeter_link": Fact(False, none, place), **facts}
     first = perimeter[0]
+    if design.section.torsion_by == "parts":
+        perimeter += [links for links in design.links if links.where == "flange"]
     found = Fact(True, f"{first.mark} is a perimeter link", first.place)
     return {
         "perimeter_link": found,

@@ -2,7 +2,7 @@
 
 - Areas by length are in mm2/mm, spacings in mm and infinite where there is no such link.
 - A perimeter link has two outer legs; the rest of its legs, and all of an inner link's, stand upright
-  between them.
+  between them. Links of flanges count apart.
 """
 
 from __future__ import annotations
@@ -30,7 +30,7 @@ def leg_area_by_length(links: LinkSet) -> float:
 
 def A_sw_s_all(design: Design) -> float:
     """Return the area of all legs of all links by length, mm2/mm."""
-    return sum((links.legs * leg_area_by_length(links) for links in design.links), 0.0)
+    return sum((links.legs * leg_area_by_length(links) for links in web_links(design)), 0.0)
 
 
 def A_leg_s(design: Design) -> float:
@@ -40,12 +40,17 @@ def A_leg_s(design: Design) -> float:
 
 def n_legs(design: Design) -> int:
     """Return the number of legs of all sets."""
-    return sum(links.legs for links in design.links)
+    return sum(links.legs for links in web_links(design))
 
 
 def perimeter_links(design: Design) -> list[LinkSet]:
     """Return the sets that enclose the section."""
     return [links for links in design.links if links.where == "perimeter"]
+
+
+def web_links(design: Design) -> list[LinkSet]:
+    """Return the sets that carry shear: all but those of flanges, which carry the flange's own torsion."""
+    return [links for links in design.links if links.where != "flange"]
 
 
 def largest_spacing(links: Iterable[LinkSet]) -> float:
@@ -55,7 +60,7 @@ def largest_spacing(links: Iterable[LinkSet]) -> float:
 
 def common_angle(design: Design) -> float:
     """Return the angle of all links to the member's axis in rad; pi/2 when they differ or there are none."""
-    angles = [links.angle for links in design.links]
+    angles = [links.angle for links in web_links(design)]
     if angles and max(angles) - min(angles) <= SAME_ANGLE:
         return angles[0]
     return pi / 2
@@ -64,7 +69,7 @@ def common_angle(design: Design) -> float:
 def S_sin(design: Design, eta_leg: float) -> float:
     """Return the sum of leg areas by length times sin(alpha), mm2/mm (6.13); outer legs by `eta_leg`."""
     total = 0.0
-    for links in design.links:
+    for links in web_links(design):
         outer = 2 if links.where == "perimeter" else 0
         total += (links.legs - outer + outer * eta_leg) * leg_area_by_length(links) * sin(links.angle)
     return total
@@ -72,7 +77,7 @@ def S_sin(design: Design, eta_leg: float) -> float:
 
 def S_cos(design: Design) -> float:
     """Return the sum of leg areas by length times cos(alpha), mm2/mm (6.13); upright links give exactly 0."""
-    inclined = (links for links in design.links if abs(links.angle - pi / 2) > SAME_ANGLE)
+    inclined = (links for links in web_links(design) if abs(links.angle - pi / 2) > SAME_ANGLE)
     return sum((links.legs * leg_area_by_length(links) * cos(links.angle) for links in inclined), 0.0)
 
 

@@ -10,10 +10,10 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import TYPE_CHECKING, NamedTuple
 
-from checker.geometry import links, steel
+from checker.geometry import flanges, links, steel
 from checker.geometry.bars import Bar, Cage, cage_of, place_bars
 from checker.geometry.facts import Fact, corners_fact, link_facts
-from checker.geometry.outline import Outline, outline_of
+from checker.geometry.outline import Outline, flanged, outline_of, web_of
 from checker.geometry.profile import Profile
 
 if TYPE_CHECKING:
@@ -41,26 +41,40 @@ def measure(design: Design) -> Measured:
     Raises `InputFaults` where a bar's face doesn't exist on the outline.
     """
     outline = outline_of(design.section)
+    web = web_of(design.section, outline)
+    acting = _acting(design, outline)
     cage = cage_of(design)
-    bars = place_bars(design, outline)
-    in_corners = steel.corner_bars(bars, outline, cage)
-    inputs = _outline_inputs(outline)
-    inputs |= _bar_inputs(bars, outline, cage)
-    inputs["c_axis"] = steel.c_axis(bars, outline, cage, in_corners)
-    inputs |= _web_inputs(outline, inputs["a_s_bottom"], inputs["a_s_top"])
-    inputs |= _link_inputs(design, outline, cage, inputs["a_s_bottom"], inputs["a_s_top"])
+    placed = place_bars(design, web)
+    bars = placed if web is outline else tuple(bar._replace(x=bar.x + web.origin[0]) for bar in placed)
+    round_web = placed if web is outline else tuple(bar for bar in placed if 0 <= bar.x <= web.width)
+    in_corners = steel.corner_bars(round_web, web, cage)
+    inputs = _outline_inputs(acting, web)
+    inputs |= _bar_inputs(bars, acting, cage)
+    inputs["gap_bars"] = steel.gap_bars(round_web, web, cage)
+    inputs["c_axis"] = steel.c_axis(round_web, web, cage, in_corners)
+    inputs |= _web_inputs(acting, inputs["a_s_bottom"], inputs["a_s_top"])
+    inputs |= _link_inputs(design, web, cage, inputs["a_s_bottom"], inputs["a_s_top"])
+    inputs |= flanges.flange_inputs(design, bars)
     profile = Profile(
-        strips_sagging=outline.profile(from_top=True),
-        strips_hogging=outline.profile(from_top=False),
+        strips_sagging=acting.profile(from_top=True),
+        strips_hogging=acting.profile(from_top=False),
         bars=tuple((bar.y, bar.area) for bar in bars),
         h=outline.height,
         y_c=inputs["y_c"],
     )
     facts = link_facts(design)
-    facts["corners_filled"] = corners_fact(in_corners, outline, design.places.get("bars"))
+    facts["corners_filled"] = corners_fact(in_corners, web, design.places.get("bars"))
+    facts["flange_corners"] = flanges.flange_corners_fact(design, bars)
+    facts["effective_width"] = flanges.effective_width_fact(design.section)
     return Measured(
         inputs, outline.shape, _is_solid_rectangle(outline, inputs["A"]), profile, bars, outline, facts
     )
+
+
+def _acting(design: Design, outline: Outline) -> Outline:
+    """What acts in bending: flanges no wider than their effective width."""
+    most = flanges.b_eff(design.section)
+    return outline if most >= outline.width else flanged(design.section, most)
 
 
 def _is_solid_rectangle(outline: Outline, area: float) -> bool:
@@ -70,16 +84,17 @@ def _is_solid_rectangle(outline: Outline, area: float) -> bool:
     return outline.shape == "rectangle"
 
 
-def _outline_inputs(outline: Outline) -> dict[str, float]:
+def _outline_inputs(acting: Outline, web: Outline) -> dict[str, float]:
+    """What bends and what the torsion of the perimeter link runs round; the same but for flanged sections."""
     return {
-        "h": outline.height,
-        "b_least": outline.least_dimension,
-        "A": outline.area,
-        "u": outline.perimeter,
-        "kappa": outline.kappa,
-        "A_c": outline.concrete_area,
-        "y_c": outline.centroid_height,
-        "t_wall": outline.least_wall,
+        "h": acting.height,
+        "b_least": web.least_dimension,
+        "A": web.area,
+        "u": web.perimeter,
+        "kappa": web.kappa,
+        "A_c": acting.concrete_area,
+        "y_c": acting.centroid_height,
+        "t_wall": web.least_wall,
     }
 
 
@@ -99,7 +114,6 @@ def _bar_inputs(bars: tuple[Bar, ...], outline: Outline, cage: Cage) -> dict[str
         "A_half_bottom": half_bottom,
         "A_half_top": total - half_bottom,
         "A_s_all": total,
-        "gap_bars": steel.gap_bars(bars, outline, cage),
         "phi_long_max": phi_long_max,
     }
 
@@ -136,7 +150,7 @@ def _link_inputs(
     return {
         "phi_link": cage.phi_link,
         "s_perimeter": links.largest_spacing(links.perimeter_links(design)),
-        "s_links": links.largest_spacing(design.links),
+        "s_links": links.largest_spacing(links.web_links(design)),
         "n_legs": float(links.n_legs(design)),
         "A_sw_s_all": links.A_sw_s_all(design),
         "A_leg_s": links.A_leg_s(design),

@@ -1,4 +1,4 @@
-"""The outline of a cross-section: rectangle, box, circle or polygon, and what is measured on it.
+"""The outline of a cross-section: rectangle, box, circle, polygon, or a web with flanges, and what is measured on it.
 
 - x runs to the right and y upwards from the lower left corner of the bounding box; mm throughout.
 - Area A and perimeter u are those of the outer boundary, a void included (EN 1992-1-1, 6.3.2(1)).
@@ -9,11 +9,12 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from itertools import pairwise
 from math import cos, hypot, inf, pi, sin, sqrt
 from typing import TYPE_CHECKING
 
+from checker.declared.flanges import FLANGED, flanged_sizes, outline_points
 from checker.geometry import polygons
 from checker.geometry.polygons import Point, Strip
 
@@ -205,7 +206,23 @@ def outline_of(section: Section) -> Outline:
         return box(size["b"], size["h"], size["wall_side"], size["wall_top"], size["wall_bottom"])
     if section.shape == "circle":
         return circle(size["diameter"])
+    if section.shape in FLANGED:
+        return flanged(section)
     return polygon(section.points)
+
+
+def flanged(section: Section, b_most: float = inf) -> Outline:
+    """Return a tee, ell or i, its flanges no wider than `b_most` mm (by their effective width, say)."""
+    points = outline_points(flanged_sizes(section, b_most))
+    return replace(polygon(points), shape=section.shape)
+
+
+def web_of(section: Section, outline: Outline) -> Outline:
+    """Return what the perimeter link follows: of a tee, ell or i the web, else the whole outline."""
+    if section.shape not in FLANGED:
+        return outline
+    sizes = flanged_sizes(section)
+    return replace(rectangle(sizes.b_w, sizes.h), origin=(sizes.web_left, 0.0))
 
 
 def _rectangle_points(b: float, h: float) -> tuple[Point, ...]:

@@ -23,6 +23,11 @@ LEG_BASIS = {
 """What each link area counts in its formula."""
 
 
+_NO_WEB_FLANGE = dict.fromkeys(
+    ("delta_F_d", "delta_x", "A_sf_s", "cot_theta_f_stated", "web_flange_top"), NAN
+)
+
+
 class Claim(NamedTuple):
     """One declared number, ready to be compared.
 
@@ -128,9 +133,24 @@ def case_row(
         "M_Ed_max": case.M_Ed_max.value if case.M_Ed_max else NAN,
         "link_stress_option": 1.0 if link_stress_option(member, claims) else 0.0,
     }
+    row |= _web_flange_row(case)
     for symbol, claim in claims.items():
         row[f"{symbol}_declared"] = claim.value
     return row
+
+
+def _web_flange_row(case: Case) -> dict[str, float]:
+    """The inputs of the shear between web and flange (nan where unsaid)."""
+    stated = case.web_flange
+    if stated is None:
+        return dict(_NO_WEB_FLANGE)
+    return {
+        "delta_F_d": stated.dF.value,
+        "delta_x": stated.dx.value,
+        "A_sf_s": stated.A_sf_s.value if stated.A_sf_s else NAN,
+        "cot_theta_f_stated": stated.cot_theta_f.value if stated.cot_theta_f else NAN,
+        "web_flange_top": 1.0 if stated.at_top else 0.0,
+    }
 
 
 def link_stress_option(member: Mapping[str, Any], claims: Mapping[str, Claim]) -> bool:

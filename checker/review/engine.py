@@ -13,6 +13,7 @@ from pathlib import Path
 from typing import Any, NamedTuple
 
 from checker import shipped
+from checker.declared.flanges import FLANGED
 from checker.declared.symbols import DECLARABLE
 from checker.errors import Fault, RuleFaults, UsageError
 from checker.sheet import store
@@ -44,10 +45,11 @@ class Engine(NamedTuple):
     follow: Program
 
 
-def shape_layers(shape: str, *, aslant: bool) -> tuple[str, ...]:
-    """The layers a section's shape and its links call for."""
-    names = (shape,) if shape in ("rectangle", "box") else ()
-    return (*names, ASLANT) if aslant else names
+def shape_layers(shape: str, *, aslant: bool, parts: bool = False) -> tuple[str, ...]:
+    """The layers a section's shape, the sharing of torsion by its parts and its links call for."""
+    plain = {"rectangle": ("rectangle",), "box": ("box",), **dict.fromkeys(FLANGED, ("flanged",))}
+    share = ("flanges-share",) if parts else ()
+    return (*plain.get(shape, ()), *share, *((ASLANT,) if aslant else ()))
 
 
 @lru_cache(maxsize=64)

@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 
 SHOWN_FACTOR: dict[str, float] = {
-    "-": 1.0, "flag": 1.0, "mm": 1.0, "mm2": 1.0, "mm3": 1.0, "mm2/mm": 1.0,
+    "-": 1.0, "flag": 1.0, "mm": 1.0, "mm2": 1.0, "mm3": 1.0, "mm4": 1.0, "mm2/mm": 1.0,
     "MPa": 1.0, "kN": 1e-3, "kNm": 1e-6, "deg": 180.0 / math.pi, "section": 1.0,
 }  # fmt: skip
 """Inside value times this is the value in the shown unit (inside: N, mm, N*mm, MPa, rad)."""
@@ -16,6 +16,7 @@ UNIT_TEXT: dict[str, str] = {
     "deg": "°",
     "mm2": " mm²",
     "mm3": " mm³",
+    "mm4": " mm⁴",
     "mm2/mm": " mm²/mm",
 }
 

@@ -93,7 +93,47 @@ FAULTS = {
         ("EN 1992-1-1:2004", "«EN 1992-1-1:2023"),
         "recognised but not judged; samestrut judges",
     ),
-    "tee": ((SECTION, "section: {shape: «tee, b_w: 300, h: 700}"), "tee and ell sections are not read yet"),
+    "tee without flange": (
+        (SECTION, "section: «{shape: tee, b_w: 300, h: 700, b_f: 900}"),
+        'missing "h_f" in section (tee) (Thickness of the flange, in mm)',
+    ),
+    "flange within the web": (
+        (SECTION, "section: {shape: ell, b_w: 400, h: 700, b_f: «400, h_f: 200}"),
+        "b_f counts the web in; expected more than b_w",
+    ),
+    "flanges without web": (
+        (
+            SECTION,
+            "section: {shape: i, b_w: 400, h: 700, b_f: 900, h_f: «400, b_f_bottom: 900, h_f_bottom: 300}",
+        ),
+        "the flange leaves no web",
+    ),
+    "side of a tee": (
+        (SECTION, "section: {shape: tee, b_w: 400, h: 700, b_f: 900, h_f: 200, «side: left}"),
+        'unknown key "side" in section (tee)',
+    ),
+    "flange link in a rectangle": (
+        ("{mark: L1", "«{mark: L1"),
+        ("place: perimeter", "place: flange"),
+        "is for sections with flanges",
+    ),
+    "flange link with one leg": (
+        ("legs: 2, place: perimeter", "legs: «1, place: flange"),
+        "a flange link encloses the flange with 2 legs or more, not 1",
+    ),
+    "web-flange shear of a rectangle": (
+        ("    N_Ed: 0\n", "    N_Ed: 0\n    web_flange: «{dF: 200, dx: 900}\n"),
+        "web_flange is for sections with flanges",
+    ),
+    "no such flange": (
+        (SECTION, "section: {shape: tee, b_w: 400, h: 700, b_f: 900, h_f: 200}"),
+        ("    N_Ed: 0\n", "    N_Ed: 0\n    web_flange: {dF: 200, dx: 900, flange: «bottom}\n"),
+        "this section has no bottom flange",
+    ),
+    "no length of web-flange shear": (
+        ("    N_Ed: 0\n", "    N_Ed: 0\n    web_flange: «{dF: 200}\n"),
+        'missing "dx" in web_flange',
+    ),
     "counts elsewhere": (("d: 642.5", "d: «{value: 642.5, counts: one leg}"), "a map stands here"),
     "counts what": (("counts: one leg", "counts: «legs"), "expected one of: one leg, all legs"),
     "blank text": (("member: EB-07", 'member: «" "'), "member: blank text"),

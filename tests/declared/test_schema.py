@@ -97,6 +97,10 @@ VALUES = [
     "box",
     "rectangle",
     "tee",
+    "ell",
+    "i",
+    "flange",
+    "parts",
     "EN 1992-1-1:2004",
     "a\nb",
     "\u202e",
@@ -110,6 +114,9 @@ VALUES = [
     {"value": 1, "counts": "all legs"},
     {"side": 90, "top": 90, "bottom": 90},
     {"shape": "circle", "diameter": 500},
+    {"shape": "tee", "b_w": 300, "h": 700, "b_f": 900, "h_f": 200},
+    {"dF": 200, "dx": 1000},
+    {"l_0": 5000, "b_1": 900},
     {"a": 1},
 ]
 KEYS = sorted(

@@ -17,7 +17,7 @@ from checker.geometry.outline import circle
 
 KEYS = """h b_least A u kappa A_c y_c t_wall c_axis b_w_sagging b_w_hogging b_t_sagging b_t_hogging cover
 a_s_bottom a_s_top A_s_bottom A_s_top A_half_bottom A_half_top A_s_all phi_link s_perimeter s_links
-n_legs A_sw_s_all A_leg_s S_sin S_cos alpha eta_leg leg_gap gap_bars phi_long_max"""
+n_legs A_sw_s_all A_leg_s S_sin S_cos alpha eta_leg leg_gap gap_bars phi_long_max n_flanges torsion_parts"""
 TEE = (
     (0.0, 0.0),
     (300.0, 0.0),
@@ -43,7 +43,7 @@ def test_measured_beam_by_hand(sound_beam):
         "A_s_all": 4 * area[25] + 3 * area[20] + 4 * area[12],
         "phi_link": 10, "s_perimeter": 150, "s_links": 150, "n_legs": 2, "A_sw_s_all": pi * 50 / 150,
         "A_leg_s": pi * 25 / 150, "S_sin": pi * 50 / 150, "S_cos": 0, "alpha": pi / 2, "eta_leg": 1,
-        "leg_gap": 320, "gap_bars": (645 - 57.5) / 3, "phi_long_max": 25,
+        "leg_gap": 320, "gap_bars": (645 - 57.5) / 3, "phi_long_max": 25, "n_flanges": 0, "torsion_parts": 0,
     }  # fmt: skip
     assert set(measured.inputs) == set(KEYS.split())
     assert dict(measured.inputs) == pytest.approx(expected)
@@ -148,7 +148,7 @@ def test_lengths_scale_and_areas_scale_by_the_square(build, factor, low, high, s
 
     one, other = inputs(1.0), inputs(factor)
     power = dict.fromkeys(KEYS.split(), 1) | dict.fromkeys(
-        ("kappa", "n_legs", "alpha", "eta_leg", "S_cos"), 0
+        ("kappa", "n_legs", "alpha", "eta_leg", "S_cos", "n_flanges", "torsion_parts"), 0
     )
     power |= {key: 2 for key in power if key == "A" or key.startswith(("A_c", "A_s_", "A_half"))}
     assert dict(other) == pytest.approx({key: one[key] * factor ** power[key] for key in one}, rel=1e-9)

@@ -23,7 +23,7 @@ from checker.sheet.quantities import Quantity, Sheet
 UNITS: Any = pint.UnitRegistry()
 PURE = UNITS.Quantity(1.0, "")
 SHEET_UNITS = {
-    "-": "", "deg": "", "flag": "", "mm": "mm", "mm2": "mm**2", "mm3": "mm**3", "mm2/mm": "mm**2/mm",
+    "-": "", "deg": "", "flag": "", "mm": "mm", "mm2": "mm**2", "mm3": "mm**3", "mm4": "mm**4", "mm2/mm": "mm**2/mm",
     "kN": "kN", "kNm": "kN*m", "MPa": "MPa",
 }  # fmt: skip
 SIGNATURES = {
@@ -37,7 +37,7 @@ ANY = "any unit"
 SECTION = "section"
 
 STANDARD = "EN 1992-1-1:2004"
-SHAPES = ("rectangle", "box", "links-aslant")
+SHAPES = ("rectangle", "box", "flanged", "flanges-share", "links-aslant")
 EMPIRICAL = {
     "f_cm", "f_ctm", "E_cm", "E_s", "lambda_c", "eta_c", "eps_cu3", "k", "v_min", "v_c", "nu", "nu_1_option",
     "rho_w_min", "s_t_max", "gap_bars_max",
