@@ -80,6 +80,32 @@ def values_of(design: Design) -> list[tuple[Engine, dict[str, Any]]]:
     return [(compiled, {**row, **compiled.scratch.run(row)}) for row in rows]
 
 
+def _random_flanged(shape: str, r: random.Random) -> dict[str, Any]:
+    """A web with flanges that share the torsion (or not), bars in the corners of each outstand."""
+    b_w, h, h_f = r.randint(300, 500), r.randint(650, 1100), r.randint(180, 300)
+    one_sided, flange = shape == "ell", r.choice(("top", "bottom"))
+    b_f = b_w + r.randint(250, 700) * (1 if one_sided else 2)
+    by, size = r.choice(("parts", "parts", "web")), r.choice((12, 16, 20))
+    lies = {
+        "i": f"b_f_bottom: {b_f}, h_f_bottom: {h_f}",
+        "tee": f"flange: {flange}",
+        "ell": f"flange: {flange}, side: left",
+    }
+    section = (
+        f"{{shape: {shape}, b_w: {b_w}, h: {h}, b_f: {b_f}, h_f: {h_f}, {lies[shape]}, torsion_by: {by}}}"
+    )
+    out = b_f - b_w if one_sided else (b_f - b_w) // 2
+    bars = [
+        "{face: bottom, bars: 4H25}, {face: top, bars: 4H20}, {face: left, bars: 2H16}, {face: right, bars: 2H16}"
+    ]
+    for face in ("top", "bottom") if shape == "i" else (flange,):
+        low = h - h_f if face == "top" else 0
+        for left in (0,) if one_sided else (0, b_f - out):
+            at = [[x, y] for x in (left + 60, left + out - 60) for y in (low + 60, low + h_f - 60)]
+            bars.append(f"{{face: {face}, diameter: {size}, at: {at}}}")
+    return {"section": section, "bars": f"[{', '.join(bars)}]"}
+
+
 def random_section(shape: str, r: random.Random) -> dict[str, Any]:
     """Section and bars of a shape with random sizes, as arguments of `design`."""
     b, h = r.randint(350, 900), r.randint(450, 1200)
@@ -97,6 +123,8 @@ def random_section(shape: str, r: random.Random) -> dict[str, Any]:
             "section": f"{{shape: circle, diameter: {b + 100}}}",
             "bars": f"[{{face: round, bars: {r.randint(6, 9)}H{r.choice((16, 20, 25))}}}]",
         }
+    if shape in ("tee", "ell", "i"):
+        return _random_flanged(shape, r)
     top, wide, thick = r.randint(0, 150), b + r.randint(150, 500), r.randint(140, 250)
     left = (wide - b) // 2
     if r.random() < 0.5:

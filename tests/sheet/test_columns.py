@@ -75,7 +75,7 @@ def _apart(name: str, scalar: list[dict[str, Any]], columns: dict[str, Any], cou
 
 
 @pytest.mark.parametrize("angle", [90, 60])
-@pytest.mark.parametrize("shape", ["rectangle", "box", "circle", "polygon"])
+@pytest.mark.parametrize("shape", ["rectangle", "box", "circle", "polygon", "tee", "i"])
 def test_scalar_and_columns_agree(shape: str, angle: int) -> None:
     r = random.Random(f"{shape}{angle}")
     rows: list[dict[str, Any]] = []
