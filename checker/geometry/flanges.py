@@ -2,7 +2,7 @@
 
 - A part is the rectangle of one outstand, thickness h_f; the web is b_w x h over the full height.
 - Torsion is shared by the section as declared; bending takes flanges no wider than their effective width.
-- Flange 1 is the flange of a tee or ell, or the top flange of an i; flange 2 is the bottom flange of an i.
+- Only for tee, ell and i. Flange 1 is the flange of a tee or ell, or the top flange of an i; flange 2 is the bottom flange of an i.
 """
 
 from __future__ import annotations
@@ -11,7 +11,7 @@ from collections.abc import Iterator
 from math import inf, nan
 from typing import TYPE_CHECKING, NamedTuple
 
-from checker.declared.flanges import FLANGED, flanged_sizes
+from checker.declared.flanges import flanged_sizes
 from checker.geometry import links, steel
 from checker.geometry.bars import Bar, Cage
 from checker.geometry.facts import Fact
@@ -19,8 +19,6 @@ from checker.geometry.outline import Outline, rectangle
 
 if TYPE_CHECKING:
     from checker.declared.model import Design, Section
-
-NO_FLANGES = "the section has no flanges"
 
 
 class Outstand(NamedTuple):
@@ -47,7 +45,7 @@ def b_eff(section: Section) -> float:
 
     b_w plus, for each side, min(0.2 b_i + 0.1 l_0, 0.2 l_0, b_i).
     """
-    if section.shape not in FLANGED or not section.spans:
+    if not section.spans:
         return inf
     l_0 = section.spans["l_0"].value
     sides = [section.spans["b_1"].value]
@@ -58,8 +56,6 @@ def b_eff(section: Section) -> float:
 
 def effective_width_fact(section: Section) -> Fact:
     """Return the fact `effective_width`: no flange is wider than what acts with the web (5.3.2.1)."""
-    if section.shape not in FLANGED:
-        return Fact(None, NO_FLANGES, None, applies=False)
     acting = b_eff(section)
     if acting == inf:
         return Fact(None, "the file gives no spans; spans: {l_0, b_1, b_2} would let it be checked", None)
@@ -70,9 +66,7 @@ def effective_width_fact(section: Section) -> Fact:
 
 
 def outstands(section: Section) -> Iterator[Outstand]:
-    """Yield every outstand, from the left, flange by flange; none for other shapes."""
-    if section.shape not in FLANGED:
-        return
+    """Yield every outstand of a tee, ell or i, from the left, flange by flange."""
     sizes = flanged_sizes(section)
     web_right = sizes.web_left + sizes.b_w
     where = (
@@ -101,9 +95,7 @@ def flange_inputs(design: Design, bars: tuple[Bar, ...]) -> dict[str, float]:
     section = design.section
     parts = list(outstands(section))
     counted = {"n_flanges": float(len({part.flange for part in parts}))}
-    counted["torsion_parts"] = 1.0 if parts and section.torsion_by == "parts" else 0.0
-    if not parts:
-        return counted
+    counted["torsion_parts"] = 1.0 if section.torsion_by == "parts" else 0.0
     flange_links = [one for one in design.links if one.where == "flange"]
     cage = flange_cage(design)
     counted |= {
@@ -143,7 +135,7 @@ def _c_axis(outline: Outline, bars: tuple[Bar, ...], cage: Cage) -> float:
 def flange_corners_fact(design: Design, bars: tuple[Bar, ...]) -> Fact:
     """Return the fact `flange_corners`: every corner of the links in the outstands has a bar in it (9.2.3(4))."""
     section, place = design.section, design.places.get("bars")
-    if section.torsion_by != "parts" or section.shape not in FLANGED:
+    if section.torsion_by != "parts":
         return Fact(None, "torsion isn't shared with flanges", place, applies=False)
     cage = flange_cage(design)
     empty = [

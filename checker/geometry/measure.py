@@ -10,7 +10,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import TYPE_CHECKING, NamedTuple
 
-from checker.geometry import flanges, links, steel
+from checker.declared.flanges import FLANGED
+from checker.geometry import links, steel
 from checker.geometry.bars import Bar, Cage, cage_of, place_bars
 from checker.geometry.facts import Fact, corners_fact, link_facts
 from checker.geometry.outline import Outline, flanged, outline_of, web_of
@@ -54,7 +55,6 @@ def measure(design: Design) -> Measured:
     inputs["c_axis"] = steel.c_axis(round_web, web, cage, in_corners)
     inputs |= _web_inputs(acting, inputs["a_s_bottom"], inputs["a_s_top"])
     inputs |= _link_inputs(design, web, cage, inputs["a_s_bottom"], inputs["a_s_top"])
-    inputs |= flanges.flange_inputs(design, bars)
     profile = Profile(
         strips_sagging=acting.profile(from_top=True),
         strips_hogging=acting.profile(from_top=False),
@@ -64,8 +64,9 @@ def measure(design: Design) -> Measured:
     )
     facts = link_facts(design)
     facts["corners_filled"] = corners_fact(in_corners, web, design.places.get("bars"))
-    facts["flange_corners"] = flanges.flange_corners_fact(design, bars)
-    facts["effective_width"] = flanges.effective_width_fact(design.section)
+    flange_inputs, flange_facts = _flanges(design, bars)
+    inputs |= flange_inputs
+    facts |= flange_facts
     return Measured(
         inputs, outline.shape, _is_solid_rectangle(outline, inputs["A"]), profile, bars, outline, facts
     )
@@ -73,8 +74,25 @@ def measure(design: Design) -> Measured:
 
 def _acting(design: Design, outline: Outline) -> Outline:
     """What acts in bending: flanges no wider than their effective width."""
+    if design.section.shape not in FLANGED:
+        return outline
+    from checker.geometry import flanges
+
     most = flanges.b_eff(design.section)
     return outline if most >= outline.width else flanged(design.section, most)
+
+
+def _flanges(design: Design, bars: tuple[Bar, ...]) -> tuple[dict[str, float], dict[str, Fact]]:
+    """Inputs and facts of the flanges; a section without any doesn't pay for the import."""
+    if design.section.shape not in FLANGED:
+        none = Fact(None, "the section has no flanges", None, applies=False)
+        return {"n_flanges": 0.0, "torsion_parts": 0.0}, {"flange_corners": none, "effective_width": none}
+    from checker.geometry import flanges
+
+    return flanges.flange_inputs(design, bars), {
+        "flange_corners": flanges.flange_corners_fact(design, bars),
+        "effective_width": flanges.effective_width_fact(design.section),
+    }
 
 
 def _is_solid_rectangle(outline: Outline, area: float) -> bool:
