@@ -2,7 +2,8 @@
 
 - A part is the rectangle of one outstand, thickness h_f; the web is b_w x h over the full height.
 - Torsion is shared by the section as declared; bending takes flanges no wider than their effective width.
-- Only for tee, ell and i. Flange 1 is the flange of a tee or ell, or the top flange of an i; flange 2 is the bottom flange of an i.
+- Only for tee, ell and i.
+- Flange 1 is the flange of a tee or ell, or the top flange of an i; flange 2 is the bottom flange of an i.
 """
 
 from __future__ import annotations
