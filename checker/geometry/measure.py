@@ -80,6 +80,7 @@ def _outline_inputs(outline: Outline) -> dict[str, float]:
         "A_c": outline.concrete_area,
         "y_c": outline.centroid_height,
         "t_wall": outline.least_wall,
+        "thickness": outline.thickness,
     }
 
 

@@ -87,6 +87,13 @@ class Outline:
         return polygons.least_hull_width(self.points)
 
     @property
+    def thickness(self) -> float:
+        """Least distance across the section between outer sides that face each other, mm."""
+        if self.circle_diameter is not None or self.shape in ("rectangle", "box"):
+            return min(self.width, self.height)
+        return polygons.least_thickness(self.points)
+
+    @property
     def least_wall(self) -> float:
         """Thinnest wall of a box, mm; infinite where there is no void."""
         if self.void is None:
