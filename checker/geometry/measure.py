@@ -81,6 +81,7 @@ def _outline_inputs(outline: Outline) -> dict[str, float]:
         "y_c": outline.centroid_height,
         "t_wall": outline.least_wall,
         "thickness": outline.thickness,
+        "reentrant_corners": float(outline.reentrant_corners),
     }
 
 

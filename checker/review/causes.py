@@ -73,7 +73,10 @@ class Causes(NamedTuple):
 
 
 def find_causes(
-    case: Evaluated, compared: Mapping[str, Comparison], broken_choices: tuple[str, ...]
+    case: Evaluated,
+    compared: Mapping[str, Comparison],
+    broken_choices: tuple[str, ...],
+    angles: tuple[AngleUsed, ...] | None = None,
 ) -> Causes:
     """Sort the declared values that disagree into roots and carried ones.
 
@@ -81,8 +84,10 @@ def find_causes(
         case: the case.
         compared: its comparisons in the order of the sheet.
         broken_choices: choices (z, cot θ) whose claim was not admissible, so that what follows hangs on them.
+        angles: the angles to go by, where they aren't all that the values betray.
     """
-    angles = angles_used(case, compared)
+    if angles is None:
+        angles = angles_used(case, compared)
     hangs_on: dict[str, tuple[str, ...]] = {
         choice: (_root(case, choice),)
         for choice in broken_choices
