@@ -33,6 +33,9 @@ from checker.review.variants import Variant
 MOST_CHANCE = 0.1
 """Expected number of candidates that would land on a random value; above it a hit says nothing."""
 
+MOST_CHANCE_TO_PLACE = 0.12
+"""The same, above which one value alone doesn't move the finding to a quantity that isn't declared."""
+
 
 def reasoned(
     case: Evaluated,
@@ -129,8 +132,7 @@ class Reasoner:
 
     def _single(self, symbol: str) -> list[Explanation]:
         """One root: one slip, two slips, a wrong dimension, a plain factor, or nothing known."""
-        stretch = self.bench.stretch(symbol)
-        near = [slip for slip in self.slips.slips if any(name in stretch for name in slip.replaces)]
+        near = self._near(symbol)
         own = [slip for slip in near if symbol in slip.replaces]
         groups = (own, [slip for slip in near if slip not in own])
         fits = [
@@ -147,6 +149,11 @@ class Reasoner:
             if pairs:
                 return [self._explanation(sorted(pairs, key=rank))]
         return [self._misread(symbol) or self._factor(symbol)]
+
+    def _near(self, symbol: str) -> list[Slip]:
+        """The slips that could have been made on the stretch of a value."""
+        stretch = self.bench.stretch(symbol)
+        return [slip for slip in self.slips.slips if any(name in stretch for name in slip.replaces)]
 
     def _misread(self, symbol: str) -> Explanation | None:
         """A misreading of the steel that lands on the value; several are named together."""
@@ -167,6 +174,8 @@ class Reasoner:
         shows = best.explained
         names = tuple(dict.fromkeys(" + ".join(s.id for s in fit.slips) for fit in ordered))
         quantity = self._place(slip, shows) if len(best.slips) == 1 else shows[0]
+        if len(shows) == 1 and self.bench.chance(shows[0], len(self._near(shows[0]))) > MOST_CHANCE_TO_PLACE:
+            quantity = shows[0]  # a coarse number alone is no witness for one that isn't declared
         beside = best.slips[1:]
         used = math.nan
         if quantity not in self.bench.compared:
@@ -188,7 +197,10 @@ class Reasoner:
         """A plain factor, or nothing."""
         claim = self.bench.compared[symbol].claim
         upstream = float(self.bench.stretch(symbol).base[symbol])
-        for factor in self.slips.factors:
+        known = (
+            self.slips.factors if self.bench.chance(symbol, len(self.slips.factors)) <= MOST_CHANCE else ()
+        )
+        for factor in known:
             allowed = (
                 claim.half_step
                 + (CONSTANTS * abs(claim.value))

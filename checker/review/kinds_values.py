@@ -134,7 +134,7 @@ def wrong_working_of(subject: Subject, cause: Explanation) -> str:
 
 def betrayed_draft(rule: Rule, subject: Subject, name: str) -> Draft | None:
     """A quantity that isn't declared, but that wrong declared values show to have been something else."""
-    cause = next((c for c in subject.explained.values() if c.quantity == name), None)
+    cause = _solved(subject, name)
     if cause is None:
         return None
     case, quantity = subject.case, subject.case.sheet.quantities[name]
@@ -144,8 +144,12 @@ def betrayed_draft(rule: Rule, subject: Subject, name: str) -> Draft | None:
     shown = ", ".join(symbol_text(symbol) for symbol in cause.shows_in)
     if name in OTHERS and (name in subject.claims or name in case.row):
         says = f"{_opening(name)} is stated as {recomputed}, but {shown} came out as if it were {used}."
-    else:
+    elif len(claims) > 1:
         says = f"{_opening(name)} is not declared, but {shown} came out as if it were {used}; it is {recomputed}."
+    else:
+        says = (
+            f"{_opening(name)} is not declared; {shown} would come out with {used}, but it is {recomputed}."
+        )
     if cause.slip not in (None, "stale-value"):
         says += f" That is so if {_slip_text(subject, cause)}."
     wide = all(claim.source.member_wide for claim in claims)
@@ -165,13 +169,19 @@ def _opening(symbol: str) -> str:
     return f"The {text}" if " " in text else text
 
 
+def _solved(subject: Subject, name: str) -> Explanation | None:
+    """The cause that other declared values show in a quantity, with the value they were worked with."""
+    causes = (c for c in subject.explained.values() if c.quantity == name and math.isfinite(c.used))
+    return next(causes, None)
+
+
 def _root_text(subject: Subject, root: str) -> str:
     unit = subject.case.sheet.quantities[root].unit
-    claim = subject.claims.get(root)
-    if claim is not None:
-        return f"{symbol_text(root)} = {with_unit(claim.value, unit)}"
-    cause = next(c for c in subject.explained.values() if c.quantity == root)
-    return f"{symbol_text(root)} = {with_unit(cause.used, unit)} (not declared)"
+    cause = _solved(subject, root)
+    if cause is not None:
+        stated = (root in OTHERS and root in subject.case.row) or root in subject.claims
+        return f"{symbol_text(root)} = {with_unit(cause.used, unit)} ({'not what is stated' if stated else 'not declared'})"
+    return f"{symbol_text(root)} = {with_unit(subject.claims[root].value, unit)}"
 
 
 def basis(rule: Rule, subject: Subject) -> Outcome:

@@ -40,11 +40,24 @@ def _agreed(bench: Bench, name: str, left: list[str]) -> tuple[float, tuple[str,
         band = bench.band(symbol, name, start) if rests else None
         if band is not None:
             bands.append((symbol, *band))
-    for _, value, _, _ in bands:
-        holding = tuple(s for s, _, low, high in bands if low <= value <= high)
+    for _, solved, _, _ in bands:
+        value = solved
+        holding = [band for band in bands if band[2] <= value <= band[3]]
+        low, high = max(band[2] for band in holding), min(band[3] for band in holding)
+        if low <= high:
+            value = _roundest(solved, low, high)
         if len(holding) > 1 and not bench.refuted(name, value):
-            return value, holding
+            return value, tuple(band[0] for band in holding)
     return None
+
+
+def _roundest(value: float, low: float, high: float) -> float:
+    """The number with the fewest digits that lies in a band: what a designer is likely to have had."""
+    for digits in range(1, 8):
+        rounded = float(f"{value:.{digits}g}")
+        if low <= rounded <= high:
+            return rounded
+    return value
 
 
 def _claimed_choices(bench: Bench) -> list[str]:

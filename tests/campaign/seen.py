@@ -9,7 +9,6 @@ from checker import audit
 from checker.declared.build import load_text
 from checker.review.findings import MemberResult
 
-
 ON_VALUES = ("agrees.", "values.other-inputs", "strut.", "lever-arm.")
 """Rules that speak of declared values and choices; the others hold what is provided against limits."""
 

@@ -245,7 +245,7 @@ def _readings(job: Job, v: Values) -> dict[str, tuple[float, ...]]:
         reach = 0.75 * v["d"] * (1 + at.tilt)
         found["s_l_max"] = (min(reach, v["u_k"] / 8, m.shape.least_dimension),)
     if v["crack_sum"] <= 1 and (m.shape.kind == "rectangle" or not a.T):
-        found |= {s: (0.0,) for s in ("A_sw_s_shear", "A_sw_s_torsion", "A_sw_s_total", "A_sl_torsion")}
+        found |= dict.fromkeys(("A_sw_s_shear", "A_sw_s_torsion", "A_sw_s_total", "A_sl_torsion"), (0.0,))
         found["A_s_tension"] += tuple(b + s for b in bending for s in shifts)
     return found
 

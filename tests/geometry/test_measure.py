@@ -15,7 +15,8 @@ from checker.geometry.links import eta_leg
 from checker.geometry.measure import measure
 from checker.geometry.outline import circle
 
-KEYS = """h b_least A u kappa A_c y_c t_wall thickness reentrant_corners c_axis b_w_sagging b_w_hogging b_t_sagging b_t_hogging cover
+KEYS = """h b_least A u kappa A_c y_c t_wall thickness
+reentrant_corners c_axis b_w_sagging b_w_hogging b_t_sagging b_t_hogging cover
 a_s_bottom a_s_top A_s_bottom A_s_top A_half_bottom A_half_top A_s_all phi_link s_perimeter s_links
 n_legs A_sw_s_all A_leg_s S_sin S_cos alpha eta_leg leg_gap gap_bars phi_long_max"""
 TEE = (
