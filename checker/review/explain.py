@@ -33,7 +33,7 @@ from checker.review.variants import Variant
 MOST_CHANCE = 0.1
 """Expected number of candidates that would land on a random value; above it a hit says nothing."""
 
-MOST_CHANCE_TO_PLACE = 0.12
+MOST_CHANCE_TO_PLACE = 1.0
 """The same, above which one value alone doesn't move the finding to a quantity that isn't declared."""
 
 

@@ -19,7 +19,7 @@ from checker.review.drafts import (
     symbol_text,
 )  # fmt: skip
 from checker.review.slips import load_slips
-from checker.review.solved import OTHERS
+from checker.review.solved import CHOICES, OTHERS
 from checker.review.stretch import Stretch
 from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
 from checker.sheet.shown import with_unit
@@ -50,7 +50,8 @@ def traced(rule: Rule, subject: Subject) -> Outcome:
     """A stated size, action or lever arm that the declared values were not worked with."""
     if not subject.compared:
         return ended(rule, subject, NOT_CHECKED, "no value is declared"), []
-    found = [draft for name in OTHERS if (draft := betrayed_draft(rule, subject, name)) is not None]
+    stated = [name for name in OTHERS if name not in CHOICES or name in subject.claims]
+    found = [draft for name in stated if (draft := betrayed_draft(rule, subject, name)) is not None]
     return ended(rule, subject, FAIL if found else PASS), found
 
 

@@ -225,7 +225,7 @@ class Job:
 def _readings(job: Job, v: Values) -> dict[str, tuple[float, ...]]:
     m, a = job.m, job.case.actions
     at = At(m, a, job.cot, v, 0.0)
-    z_b, about = at.bent
+    _, about = at.bent
     by_z = max(0.0, about / v["z"] - a.N) / v["f_yd"]
     shift = v["delta_F_td"] / v["f_yd"]
     half = v["A_sl_torsion"] / 2

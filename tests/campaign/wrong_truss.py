@@ -70,7 +70,7 @@ def summed(what: str, join: str) -> dict[str, Wrong]:
         "root": lambda t, v: sqrt(t**2 + v**2),
         "shear": lambda t, v: v,
         "torsion": lambda t, v: t,
-        "larger": lambda t, v: max(t, v),
+        "larger": max,
         "inverted": lambda t, v: 1 / (t + v),
         "difference": lambda t, v: abs(v - t),
     }
@@ -97,6 +97,7 @@ TRUSS: dict[str, dict[str, Wrong]] = {
     "shear-at-flattest": links(cot=lambda x: FLATTEST),
     "shear-links-per-leg": links(legs=lambda x: x.n_legs),
     "depth-for-lever-arm-links": links(arm=lambda x: x.d),
+    "option-stress-in-links": links(stress=lambda x: 0.8 * x.m.f_ywk),
     "characteristic-stress-in-links": links(stress=lambda x: x.m.f_ywk),
     "bar-strength-in-links": links(stress=lambda x: x.f_yd),
     "concrete-added-to-links": {
@@ -110,12 +111,16 @@ TRUSS: dict[str, dict[str, Wrong]] = {
     "nu-left-out-of-crushing-shear": {"V_Rd_max": lambda x: struts(x, nu=1.0)},
     "characteristic-strength-in-crushing-shear": {"V_Rd_max": lambda x: struts(x, stress=x.m.f_ck)},
     "tangent-left-out-of-crushing-shear": {"V_Rd_max": lambda x: x.right * (1 + x.cot**2) / x.cot**2},
+    "compression-in-crushing-shear": {
+        "V_Rd_max": lambda x: min(1.25, 1 + max(0.0, x.a.N) / (x.m.shape.A_c * x.f_cd)) * struts(x)
+    },
     "height-in-crushing-shear": {"V_Rd_max": lambda x: struts(x, arm=x.m.shape.h)},
 }
 
 TORSION: dict[str, dict[str, Wrong]] = {
     "cracking-factor-two-left-out": {"T_Rd_c": lambda x: x.right / 2},
     "cracking-by-gross-area": {"T_Rd_c": lambda x: 2 * x.A * x.t_ef * x.f_ctd},
+    "cracking-with-factored-mean-strength": {"T_Rd_c": lambda x: 2 * x.A_k * x.t_ef * f_ctm(x.m.f_ck) / 1.5},
     "cracking-with-mean-strength": {"T_Rd_c": lambda x: 2 * x.A_k * x.t_ef * f_ctm(x.m.f_ck)},
     "crushing-factor-two-left-out": {"T_Rd_max": lambda x: x.right / 2},
     "sine-cosine-doubled-torsion": {"T_Rd_max": lambda x: 2 * x.right},
@@ -165,6 +170,7 @@ SUMS: dict[str, dict[str, Wrong]] = {
     "links-shear-forgotten": {"A_sw_s_total": lambda x: 2 * x.A_sw_s_torsion},
     "links-mean-of-both": {"A_sw_s_total": lambda x: x.right / 2},
     "links-outer-leg-for-all": {"A_sw_s_total": lambda x: x.A_sw_s_shear / x.n_legs + x.A_sw_s_torsion},
+    "links-torsion-doubled-twice": {"A_sw_s_total": lambda x: x.A_sw_s_shear + 4 * x.A_sw_s_torsion},
     "links-torsion-half-leg": {"A_sw_s_total": lambda x: x.A_sw_s_shear + x.A_sw_s_torsion / 2},
     "links-torsion-subtracted": {"A_sw_s_total": lambda x: abs(x.A_sw_s_shear - 2 * x.A_sw_s_torsion)},
 }

@@ -144,6 +144,7 @@ TUBE: dict[str, dict[str, Wrong]] = {
     "wall-twice-cover": {"t_ef": lambda x: 2 * x.m.cover},
     "wall-twice-axis": {"t_ef": lambda x: 2 * x.m.corner_axis},
     "wall-thicker-than-real": {"t_ef": lambda x: max(x.A / x.u, 2 * x.m.corner_axis)},
+    "wall-of-axis": {"t_ef": lambda x: x.m.corner_axis},
     "wall-of-half": {"t_ef": lambda x: x.A / x.u / 2},
     "wall-of-concrete-area": {"t_ef": lambda x: x.m.shape.A_c / x.u},
     "gross-area-for-enclosed": {"A_k": lambda x: x.A},
