@@ -127,6 +127,8 @@ def _audit(options: argparse.Namespace) -> int:
             raise UsageError(
                 f"{path}: don't know how to write {kind or 'a file without an ending'}; known are .json, .txt"
             )
+        if any(_same_file(path, given) for given in options.paths):
+            raise UsageError(f"{path}: is one of the files to audit; write the report elsewhere")
     report = audit(options.paths, annex=options.annex, rules=options.rules)
     for fault in report.faults:
         print(fault, file=sys.stderr)
@@ -138,6 +140,12 @@ def _audit(options: argparse.Namespace) -> int:
     elif not options.quiet and report.members:
         sys.stdout.write(_coloured(report.text(workings=options.workings)))
     return report.exit_code
+
+
+def _same_file(output: str, given: str) -> bool:
+    """Whether a report would be written over a file that is to be audited, named alone or lying in a folder."""
+    target, source = Path(output).resolve(), Path(given).resolve()
+    return target == source or (target.exists() and source.is_dir() and source in target.parents)
 
 
 def write_whole(path: Path, text: str) -> None:

@@ -9,23 +9,25 @@ from __future__ import annotations
 import os
 from collections.abc import Iterable, Iterator
 from contextlib import suppress
+from functools import cache, partial
 from pathlib import Path
 from typing import NamedTuple
 
 from checker import __version__
 from checker.declared.build import load_file
-from checker.declared.model import Design
-from checker.errors import Fault, InputFaults, RuleFaults
+from checker.declared.model import NOWHERE, Design
+from checker.errors import Fault, InputFaults, UsageError
 from checker.geometry.measure import Measured, measure
 from checker.report.audit_report import AuditReport, Input, Stamp
 from checker.review.catalogue import Catalogue, load_catalogue
 from checker.review.claims import case_row, claims_of, member_row
 from checker.review.drafts import Check, Draft
-from checker.review.engine import Engine, annex_path, engine, shape_layers
+from checker.review.engine import Engine, annex_path, engine, shape_layers, sheet_under
 from checker.review.evaluated import evaluate
 from checker.review.findings import INCOMPLETE, CaseResult, MemberResult, number_findings, outcome_of, worst
 from checker.review.judge import judge
 from checker.review.subject import Subject, subject_of
+from checker.review.variants import variants_of
 from checker.review.window import reserves_of
 from checker.sheet.rulefile import rules_digest
 
@@ -75,8 +77,10 @@ def audit(
     """
     options = Options(annex, Path(rules) if rules is not None else None)
     catalogue = load_catalogue(options.rules, options.rules.name if options.rules else "")
-    if annex is not None:
-        annex_path(annex)
+    if annex is not None or rules is not None:
+        sheet_under(
+            STANDARD, annex or "recommended", (), options.rules
+        )  # a fault here is the run's, not a file's
     members: list[MemberResult] = []
     inputs: list[Input] = []
     faults: list[Fault] = []
@@ -84,15 +88,13 @@ def audit(
     for item in _expanded([items] if isinstance(items, str | Path | Design) else items, faults):
         try:
             design = item if isinstance(item, Design) else load(item)
-            measured = measure(design)
-            annexes[_annex_of(design, options)] = None
+            used = _annex_of(design, options)
             start = 1 + sum(len(member.findings) for member in members)
-            members.append(audit_member(design, measured, catalogue, options, start))
-        except RuleFaults:
-            raise
+            members.append(audit_member(design, measure(design), catalogue, options, start))
         except InputFaults as error:
             faults += error.faults
             continue
+        annexes[used] = None
         inputs.append(Input(design.file, design.sha256))
     outcome = worst([*(member.outcome for member in members), *([INCOMPLETE] if faults else [])])
     return AuditReport(_stamp(annexes, options), tuple(inputs), outcome, tuple(members), tuple(faults))
@@ -108,10 +110,11 @@ def audit_member(
     checks: dict[tuple[str, str | None], Check] = {}
     drafts: list[Draft] = []
     cases: list[CaseResult] = []
+    variants = cache(partial(variants_of, design))
     for case in design.cases:
         claims = claims_of(case, measured)
         case_values = evaluate(compiled, case, claims, case_row(row, case, claims, inputs))
-        subject = subject_of(case_values, catalogue, measured.facts, design.places)
+        subject = subject_of(case_values, catalogue, measured.facts, design.places, variants)
         found, drafted = judge(subject)
         for check in found:
             _keep(checks, check)
@@ -136,12 +139,21 @@ def engine_for(design: Design, measured: Measured, options: Options) -> Engine:
 
 
 def _annex_of(design: Design, options: Options) -> str:
-    """The annex of a run, else the file's own; a layer file is looked for beside the design that names it."""
+    """The annex of a run, else the file's own; a layer file is looked for beside the design that names it.
+
+    Raises:
+        InputFaults: the file names an annex that doesn't exist.
+    """
     if options.annex is not None:
         return options.annex
     beside = Path(design.file).parent / design.annex
     if design.annex.endswith((".yaml", ".yml")) and not Path(design.annex).is_file() and beside.is_file():
         return beside.as_posix()
+    try:
+        annex_path(design.annex)
+    except UsageError as error:
+        place = design.places.get("annex", NOWHERE)
+        raise InputFaults([Fault(design.file, place.line, place.column, f"annex: {error}")]) from None
     return design.annex
 
 
@@ -168,22 +180,29 @@ def _result(subject: Subject, compiled: Engine) -> CaseResult:
         and symbol not in ("unsaid", "one", "nothing")
     }
     units = {symbol: quantities[symbol].unit for symbol in shown}
-    return CaseResult(subject.case.case.name, shown, units, subject.window, reserves_of(subject.case.scratch))
+    claimed = any("theta" in symbol for symbol in subject.case.case.declared)
+    reserve = reserves_of(subject.case.scratch)
+    return CaseResult(subject.case.case.name, shown, units, subject.window, reserve, claimed)
 
 
 def _expanded(items: Iterable[Item], faults: list[Fault]) -> Iterator[Item]:
-    """Files as they come, folders by their declared designs in order of name."""
+    """Files as they come, folders by their declared designs in order of name; each file once."""
+    seen: set[Path] = set()
     for item in items:
-        if isinstance(item, Design) or not Path(item).is_dir():
+        if isinstance(item, Design):
             yield item
             continue
-        files = sorted(
-            path for path in Path(item).rglob("*") if path.suffix.lower() in SUFFIXES and path.is_file()
-        )
-        if not files:
-            said = f"no declared designs in this folder; expected files that end in {', '.join(SUFFIXES)}"
-            faults.append(Fault(_named(Path(item)), 1, 1, said))
-        yield from files
+        path = Path(item)
+        found = [path]
+        if path.is_dir():
+            found = sorted(p for p in path.rglob("*") if p.suffix.lower() in SUFFIXES and p.is_file())
+            if not found:
+                said = f"no declared designs in this folder; expected files that end in {', '.join(SUFFIXES)}"
+                faults.append(Fault(_named(path), 1, 1, said))
+        for file in found:
+            if file.resolve() not in seen:
+                seen.add(file.resolve())
+                yield file
 
 
 def _stamp(annexes: Iterable[str], options: Options) -> Stamp:

@@ -113,6 +113,8 @@ def _outline_inputs(acting: Outline, web: Outline) -> dict[str, float]:
         "A_c": acting.concrete_area,
         "y_c": acting.centroid_height,
         "t_wall": web.least_wall,
+        "thickness": web.thickness,
+        "reentrant_corners": float(web.reentrant_corners),
     }
 
 

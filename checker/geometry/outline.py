@@ -88,6 +88,20 @@ class Outline:
         return polygons.least_hull_width(self.points)
 
     @property
+    def reentrant_corners(self) -> int:
+        """How many corners point inwards; a straight corner is none."""
+        return sum(
+            1 for i in range(len(self.points)) if polygons.turning(self.points, i)[0] < -polygons.STRAIGHT
+        )
+
+    @property
+    def thickness(self) -> float:
+        """Least distance across the section between outer sides that face each other, mm."""
+        if self.circle_diameter is not None or self.shape in ("rectangle", "box"):
+            return min(self.width, self.height)
+        return polygons.least_thickness(self.points)
+
+    @property
     def least_wall(self) -> float:
         """Thinnest wall of a box, mm; infinite where there is no void."""
         if self.void is None:

@@ -7,7 +7,7 @@
 from __future__ import annotations
 
 from itertools import pairwise
-from math import hypot
+from math import hypot, inf
 from typing import TypeAlias
 
 Point: TypeAlias = tuple[float, float]
@@ -139,6 +139,34 @@ def inset(points: tuple[Point, ...], distance: float) -> tuple[Point, ...]:
     Valid while no edge vanishes.
     """
     return tuple(inset_corner(points, i, distance, distance) for i in range(len(points)))
+
+
+def least_thickness(points: tuple[Point, ...]) -> float:
+    """Return the least distance across the section between two sides that face each other, mm; inf if none do.
+
+    A tube whose wall is thicker than that doesn't fit into the outline.
+    """
+    count = len(points)
+    least = inf
+    for i in range(count):
+        x, y = points[i]
+        for k in range(count):
+            if k in (i, (i - 1) % count) or not _faces(points, i, k):
+                continue
+            (x0, y0), (dx, dy) = points[k], direction(points, k)
+            along = (x - x0) * dx + (y - y0) * dy
+            across = dx * (y - y0) - dy * (x - x0)
+            (x1, y1) = points[(k + 1) % count]
+            if -STRAIGHT <= along <= hypot(x1 - x0, y1 - y0) + STRAIGHT and across > STRAIGHT:
+                least = min(least, across)
+    return least
+
+
+def _faces(points: tuple[Point, ...], i: int, k: int) -> bool:
+    """Whether a side that ends in corner i runs against side k, within 60 degrees."""
+    dx, dy = direction(points, k)
+    sides = (direction(points, i - 1), direction(points, i))
+    return any(ax * dx + ay * dy < -0.5 for ax, ay in sides)
 
 
 def distance_inside(points: tuple[Point, ...], point: Point) -> float:

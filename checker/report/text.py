@@ -12,7 +12,7 @@ from typing import TYPE_CHECKING
 
 from checker.review.drafts import CRASHED, FAIL, NOT_APPLICABLE, NOT_CHECKED, PASS
 from checker.review.findings import CaseResult, Finding, MemberResult
-from checker.review.window import Span, common_span, degrees_of
+from checker.review.window import AS_CLAIMED, Span, common_span, degrees_of
 from checker.sheet.shown import number, paper, with_unit
 
 if TYPE_CHECKING:
@@ -82,7 +82,7 @@ def _cases(cases: tuple[CaseResult, ...]) -> str:
             case.case,
             *(_action(case, symbol) for symbol in ("V_Ed", "T_Ed", "M_Ed", "N_Ed")),
             _angles(case.window.admissible),
-            case.window.holds,
+            _held(case),
             _reserve(case),
         ]
         for case in cases
@@ -94,7 +94,7 @@ def _cases(cases: tuple[CaseResult, ...]) -> str:
         "M_Ed",
         "N_Ed",
         "strut angles\nthat hold",
-        "as provided\nit holds",
+        "links, struts, bars\nhold as provided",
         _GROWTH,
     ]
     table = str(tabulate(rows, heads, tablefmt="plain", disable_numparse=True))
@@ -103,6 +103,13 @@ def _cases(cases: tuple[CaseResult, ...]) -> str:
             f"\nStrut angles that hold in every case: {_angles(common_span(case.window for case in cases))}"
         )
     return table
+
+
+def _held(case: CaseResult) -> str:
+    """What the window says; where no angle is claimed, that it is the one worked out here."""
+    if case.window.holds == AS_CLAIMED and not case.claimed:
+        return "on the angle worked out"
+    return case.window.holds
 
 
 _GROWTH = "actions may be scaled to\n(angle used / best)"

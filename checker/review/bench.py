@@ -8,7 +8,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Mapping
-from typing import NamedTuple
+from typing import Any, NamedTuple
 
 from checker.declared.symbols import DECLARABLE
 from checker.review.causes import Causes
@@ -17,6 +17,7 @@ from checker.review.evaluated import Evaluated
 from checker.review.slips import Slip
 from checker.review.stretch import Stretch, solve_back
 from checker.sheet.expression import Expression
+from checker.sheet.load import DECLARED
 
 CONSTANTS = 5.5e-4
 """Relative slack for constants that the trade rounds: 0.87 for 1/1.15, 1.33 for 4/3, 78.5 for 78.54."""
@@ -48,11 +49,12 @@ class Fit(NamedTuple):
     slips: tuple[Slip, ...]
     explained: tuple[str, ...]
     misfit: float  # over what rounding allows, in halves
+    spared: int = 0  # declared quantities the slips replace that came out right all the same
 
     @property
     def rank(self) -> tuple[float, ...]:
         weight = min(slip.weight for slip in self.slips)
-        return (len(self.slips), math.ceil(self.misfit * 2), -weight, -len(self.explained))
+        return (len(self.slips), math.ceil(self.misfit * 2), self.spared, -weight, -len(self.explained))
 
     @property
     def replaced(self) -> dict[str, Expression]:
@@ -66,7 +68,7 @@ class Bench:
         self.case = case
         self.compared = compared
         wrong = {*causes.roots, *causes.carried}
-        self.right = [symbol for symbol in compared if symbol not in wrong]
+        self.right = [symbol for symbol in compared if symbol not in wrong and not self._is_choice(symbol)]
         self._stretches: dict[str, Stretch] = {}
 
     def stretch(self, symbol: str) -> Stretch:
@@ -76,14 +78,18 @@ class Bench:
 
     def is_hidden(self, symbol: str) -> bool:
         """A quantity a designer works with but has not declared here."""
-        return symbol in DECLARABLE and symbol not in self.case.claims
+        return symbol in DECLARABLE and "theta" not in symbol and symbol not in self.case.claims
+
+    def _is_choice(self, symbol: str) -> bool:
+        """What a designer may choose: that it is admissible speaks for nothing."""
+        return self.case.sheet.quantities[symbol].kind == "choice"
 
     def misfit(self, symbol: str, replaced: Mapping[str, Expression]) -> float | None:
         """How well wrong formulas land on a declared value, as a share of what rounding allows; None: they don't."""
         claim = self.compared[symbol].claim
         stretch = self.stretch(symbol)
         gap = abs(stretch.result(replaced) - claim.value)
-        if not gap <= claim.half_step + 0.05 * abs(claim.value):
+        if not gap <= claim.half_step + 0.05 * max(abs(claim.value), abs(self.compared[symbol].upstream)):
             return None
         allowed = claim.half_step + stretch.inherited(replaced) + CONSTANTS * abs(claim.value) + 1e-12
         return gap / allowed if gap <= allowed else None
@@ -101,13 +107,28 @@ class Bench:
                 worst = max(worst, misfit)
         if not explained:
             return None
-        if all(name not in replaced for name in explained) and any(name in replaced for name in self.right):
+        spared = sum(name in replaced and self._moves(name, replaced) for name in self.right)
+        if spared and all(name not in replaced for name in explained):
             return None  # who declares one of its quantities rightly did not make it at its twin
         hidden = {name: formula for name, formula in replaced.items() if name not in self.compared}
         for symbol in self.right:
             if any(name in self.stretch(symbol) for name in hidden) and self._moves(symbol, hidden):
                 return None
-        return Fit(slips, tuple(explained), worst)
+        return Fit(slips, tuple(explained), worst, spared)
+
+    def chance(self, symbol: str, candidates: int) -> float:
+        """How many of so many candidates would land on a random value between a third and three times this one."""
+        claim = self.compared[symbol].claim
+        allowed = claim.half_step + self.stretch(symbol).inherited({}) + CONSTANTS * abs(claim.value)
+        return candidates * allowed / abs(claim.value) if claim.value else math.inf
+
+    def lands(self, symbol: str, changes: Mapping[str, Any]) -> bool:
+        """Whether other inputs, carried through the stretch, give the declared value within rounding."""
+        claim, stretch = self.compared[symbol].claim, self.stretch(symbol)
+        row = {**self.case.row, **changes, f"{symbol}{DECLARED}": math.nan}
+        result = float(self.case.engine.follow.run(row)[symbol])
+        allowed = claim.half_step + stretch.inherited({}) + CONSTANTS * abs(claim.value)
+        return abs(result - claim.value) <= allowed
 
     def _moves(self, symbol: str, replaced: Mapping[str, Expression]) -> bool:
         """Whether wrong formulas move a right declared value away from what is declared."""

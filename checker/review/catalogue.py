@@ -42,7 +42,8 @@ class Rule(NamedTuple):
         kind: one of `KINDS`.
         gravity: one of `GRAVITIES`, or "by-window": unsafe where no common strut angle is left, else a breach.
         says, todo: sentences with `{placeholders}`.
-        quantity, or_: for `agrees`: the symbol, and readings that are right as well.
+        quantity, or_: for `agrees` the symbol, and readings that are right as well; for a limit on a choice the choice,
+            so that a value beyond it is traced and named like any other.
         quantities: for `same`, `implied`, `basis`.
         provided, limit: for `at_most` and `at_least`.
         fact, flag: for `holds`: a fact measured from the geometry, or a flag of the sheet.

@@ -73,7 +73,10 @@ class Causes(NamedTuple):
 
 
 def find_causes(
-    case: Evaluated, compared: Mapping[str, Comparison], broken_choices: tuple[str, ...]
+    case: Evaluated,
+    compared: Mapping[str, Comparison],
+    broken_choices: tuple[str, ...],
+    angles: tuple[AngleUsed, ...] | None = None,
 ) -> Causes:
     """Sort the declared values that disagree into roots and carried ones.
 
@@ -81,9 +84,15 @@ def find_causes(
         case: the case.
         compared: its comparisons in the order of the sheet.
         broken_choices: choices (z, cot θ) whose claim was not admissible, so that what follows hangs on them.
+        angles: the angles to go by, where they aren't all that the values betray.
     """
-    angles = angles_used(case, compared)
-    hangs_on: dict[str, tuple[str, ...]] = {choice: (_root(case, choice),) for choice in broken_choices}
+    if angles is None:
+        angles = angles_used(case, compared)
+    hangs_on: dict[str, tuple[str, ...]] = {
+        choice: (_root(case, choice),)
+        for choice in broken_choices
+        if choice not in compared or compared[choice].agrees
+    }
     roots: list[str] = []
     carried: dict[str, tuple[str, ...]] = {}
     for angle in angles:
@@ -123,7 +132,7 @@ def angles_used(case: Evaluated, compared: Mapping[str, Comparison]) -> tuple[An
             found[0] = first._replace(shows_in=(*first.shows_in, *failing), both=True)
         else:
             found.append(AngleUsed(side, claim, used, tuple(failing)))
-    if not found and not any(side in case.claims for side in SIDES):
+    if not found and not all(side in case.claims for side in SIDES):
         found += _parted(case)
     return tuple(found)
 
@@ -169,18 +178,29 @@ def _common(bands: Mapping[str, Band], failing: list[str]) -> float | None:
 
 
 def _parted(case: Evaluated) -> list[AngleUsed]:
-    """Shear and torsion values without a claim, whose implied angles have no band in common."""
-    used: dict[str, Band] = {}
+    """Shear and torsion worked on angles without a band in common, where not both are claimed."""
+    bands: dict[str, Band] = {}
     for side, symbols in SIDES.items():
-        bands = bands_of(case, symbols)
-        if not bands:
+        claim = case.claims.get(side)
+        if claim is not None:
+            reach = claim.half_step
+            bands[side] = Band(side, claim.value, claim.value - reach, claim.value + reach)
+            continue
+        implied = bands_of(case, symbols)
+        if not implied:
             return []
-        used[side] = min(bands.values(), key=lambda band: band.high / band.low)
-    shear, torsion = used["cot_theta_shear"], used["cot_theta_torsion"]
-    if shear.high * (1 + AGREE) < torsion.low or torsion.high * (1 + AGREE) < shear.low:
-        shows = tuple(s for s in SIDES["cot_theta_torsion"] if s in case.claims)
-        return [AngleUsed("cot_theta_torsion", None, torsion.cot, shows, shear.cot)]
-    return []
+        bands[side] = min(implied.values(), key=lambda band: band.high / band.low)
+    shear, torsion = bands["cot_theta_shear"], bands["cot_theta_torsion"]
+    apart = shear.high * (1 + AGREE) < torsion.low or torsion.high * (1 + AGREE) < shear.low
+    if not apart or not case.scratch["has_both"]:
+        return []
+    side, other = (
+        ("cot_theta_torsion", shear)
+        if "cot_theta_torsion" not in case.claims
+        else ("cot_theta_shear", torsion)
+    )
+    shows = tuple(symbol for symbol in SIDES[side] if symbol in case.claims)
+    return [AngleUsed(side, None, bands[side].cot, shows, other.cot)]
 
 
 def _is(a: float, b: float) -> bool:

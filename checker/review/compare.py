@@ -14,6 +14,7 @@ from checker.review.claims import Claim
 from checker.review.evaluated import Evaluated
 
 TINY = 1e-9
+COMPARED = ("agrees", "at_most")
 
 
 class Comparison(NamedTuple):
@@ -39,10 +40,12 @@ class Comparison(NamedTuple):
 
 
 def compare_all(case: Evaluated, catalogue: Catalogue) -> dict[str, Comparison]:
-    """Every declared number that an `agrees` rule speaks of, in the order of the sheet."""
+    """Every declared number that an `agrees` rule, or the limit of a choice, speaks of, in the order of the sheet."""
     position = {symbol: index for index, symbol in enumerate(case.sheet.order)}
     found: dict[str, Comparison] = {}
-    rules = {rule.quantity: rule for rule in catalogue.rules.values() if rule.kind == "agrees"}
+    rules = {
+        rule.quantity: rule for rule in catalogue.rules.values() if rule.kind in COMPARED and rule.quantity
+    }
     for symbol in sorted((s for s in case.claims if s in rules), key=position.__getitem__):
         found[symbol] = compare(case, case.claims[symbol], rules[symbol])
     return found

@@ -15,7 +15,7 @@ from typing import Any, NamedTuple
 from checker import shipped
 from checker.declared.flanges import FLANGED
 from checker.declared.symbols import DECLARABLE
-from checker.errors import Fault, RuleFaults, UsageError
+from checker.errors import UsageError
 from checker.sheet import store
 from checker.sheet.load import DECLARED, LAYERS_FILE, SHEET_FOLDER, lay, load_layers, load_sheet
 from checker.sheet.program import Program, Values, assemble, build
@@ -137,7 +137,7 @@ def annex_path(annex: str) -> Path:
     """Where an annex's layers stand.
 
     Raises:
-        RuleFaults: no annex of that name ships and no file of that name exists.
+        UsageError: no annex of that name ships and no file of that name exists.
     """
     folder = shipped.folder("rules") / "annexes"
     if (folder / f"{annex}.yaml").is_file():
@@ -146,4 +146,4 @@ def annex_path(annex: str) -> Path:
     if path.suffix in (".yaml", ".yml") and path.is_file():
         return path
     names = ", ".join(sorted(p.stem for p in folder.glob("*.yaml")))
-    raise RuleFaults([Fault(annex, 1, 1, f"no such annex; known are {names}, or the path of a layer file")])
+    raise UsageError(f"{annex}: no such annex; known are {names}, or the path of a layer file")

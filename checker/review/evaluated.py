@@ -11,6 +11,7 @@ from checker.declared.model import Case
 from checker.review.bases import settle_bases
 from checker.review.claims import Claim
 from checker.review.engine import ANGLES, Engine
+from checker.review.rounding import hidden_steps
 from checker.sheet.load import DECLARED
 from checker.sheet.quantities import Sheet
 
@@ -51,11 +52,17 @@ class Evaluated:
         """How far the rounding of the declared values X rests on can have moved it, to first order.
 
         Sum of |dX/dx| times half a step of x over the nearest declared values x (inside units), those among
-        them that a strut angle left unsaid was read from.
+        them that a strut angle left unsaid was read from; and of the numbers between that a designer writes down
+        on the way without declaring them, each by its usual rounding.
         """
         free = {symbol: math.nan}
-        base = float(self.shifted(free)[reading])
+        values = self.shifted(free)
+        base = float(values[reading])
         total = 0.0
+        for name, half in hidden_steps(self.between(symbol), self.claims).items():
+            nudged = self.shifted({**free, name: float(values[name]) + half})
+            change = abs(float(nudged[reading]) - base)
+            total += change if math.isfinite(change) else 0.0
         for name in dict.fromkeys((*self.ancestors(symbol), *self.angle_sources())):
             if name == symbol:
                 continue
@@ -100,6 +107,21 @@ class Evaluated:
     def ancestors(self, symbol: str) -> tuple[str, ...]:
         """The nearest declared symbols that X's formula rests on, in the order of the sheet."""
         return nearest_declared(self.sheet, symbol, frozenset(self.claims))
+
+    def between(self, symbol: str) -> tuple[str, ...]:
+        """The undeclared quantities that lie between X and those, in the order of the sheet."""
+        quantities = self.sheet.quantities
+        found: set[str] = set()
+        stack = [symbol]
+        while stack:
+            formula = quantities[stack.pop()].formula
+            for name in formula.names if formula is not None else ():
+                stop = name in self.claims or name in ANGLES or name.endswith(DECLARED)
+                if stop or name in found or quantities[name].is_input:
+                    continue
+                found.add(name)
+                stack.append(name)
+        return tuple(name for name in self.sheet.order if name in found and name != symbol)
 
 
 def evaluate(engine: Engine, case: Case, claims: Mapping[str, Claim], row: Mapping[str, Any]) -> Evaluated:

@@ -38,6 +38,7 @@ class CaseResult(NamedTuple):
     units: Mapping[str, str]
     window: Window
     reserve: tuple[Reserve, Reserve]
+    claimed: bool = True
 
 
 class MemberResult(NamedTuple):
@@ -69,7 +70,10 @@ def merge_cases(drafts: Iterable[Draft]) -> list[Draft]:
             continue
         worse = min(known, draft, key=lambda d: (GRAVITIES.index(d.gravity), -_off(d)))
         cases = tuple(dict.fromkeys((*known.cases, *draft.cases)))
-        merged[key] = worse._replace(cases=cases)
+        says = worse.says
+        if known.recomputed != draft.recomputed and not says.startswith("In case "):
+            says = f"In case {worse.cases[0]}: {says}"
+        merged[key] = worse._replace(cases=cases, says=says)
     return list(merged.values())
 
 

@@ -18,6 +18,7 @@ from checker.review.drafts import (
     apart,
     symbol_text,
 )  # fmt: skip
+from checker.review.kinds_values import betrayed_draft, others, reason, wrong_working_of
 from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
 from checker.review.window import NO_ANGLE, Window, degrees_of
 from checker.sheet.load import DECLARED
@@ -51,6 +52,9 @@ def at_limit(rule: Rule, subject: Subject) -> Outcome:
         margins.append(_spare(over, limit))
     if failed:
         return ended(rule, subject, FAIL, margin=min(margins)), list(failed.values())
+    betrayed = betrayed_draft(rule, subject, rule.quantity) if rule.quantity and not margins else None
+    if betrayed is not None:
+        return ended(rule, subject, FAIL), [betrayed]
     if not margins:
         return ended(rule, subject, NOT_CHECKED, f"{symbol_text(rule.provided[0])} is not stated"), []
     return ended(rule, subject, PASS, margin=min(margins)), []
@@ -77,13 +81,32 @@ def _limit_draft(
         unit, declared, bound = "deg", math.atan2(1.0, value), math.atan2(1.0, limit)
     safe = rule.id in ("lever-arm.below-usual",)
     place = claim.source.place if claim else _place_of(subject, rule)
+    why = _traced_back(rule, subject)
+    says = " ".join(filter(None, (words.fill(rule.says), str(why.pop("reason", "")))))
     return draft_of(
-        rule, subject, claim, quantity=shown, unit=unit, key=name if claim else rule.id, says=words.fill(rule.says),
+        rule, subject, claim, quantity=shown, unit=unit, key=name if claim else rule.id, says=says, **why,
         gravity=gravity, declared=declared,
         recomputed=bound if claim else value, limit=bound, where=(place,) if place else (),
         direction=SAFE_SIDE if safe else UNSAFE_SIDE,
         working=working(case.sheet, rule.limit, case.scratch),
     )  # fmt: skip
+
+
+def _traced_back(rule: Rule, subject: Subject) -> dict[str, object]:
+    """For a choice beyond its limit: the slip that gives it, or the root it follows from."""
+    comparison = subject.compared.get(rule.quantity)
+    if comparison is None or comparison.agrees:
+        return {}
+    above, cause = subject.roots_of(rule.quantity), subject.explained.get(rule.quantity)
+    found: dict[str, object] = {"reason": reason(subject, comparison, above, cause)}
+    if above:
+        return {**found, "hangs_on": above[0], "todo": "Follows the root finding."}
+    if cause is None or cause.quantity != rule.quantity:
+        return found
+    return {
+        **found, "slip": cause.slip, "slips": cause.fits, "shows_in": others(cause, rule.quantity),
+        "wrong_working": wrong_working_of(subject, cause),
+    }  # fmt: skip
 
 
 def _place_of(subject: Subject, rule: Rule) -> Place | None:

@@ -50,11 +50,13 @@ def _angle_draft(rule: Rule, subject: Subject, angle: AngleUsed) -> Draft:
     used = math.atan2(1.0, angle.used)
     shown = ", ".join(symbol_text(symbol) for symbol in angle.shows_in)
     if angle.claim is None:
-        against, gravity, quantity = math.atan2(1.0, angle.other), "breach", "theta_torsion"
+        against, gravity, quantity = math.atan2(1.0, angle.other), "breach", angle.side.removeprefix("cot_")
+        here, there = ("torsion", "shear") if quantity == "theta_torsion" else ("shear", "torsion")
+        said_of_it = "is declared with" if f"cot_theta_{there}" in subject.claims else "was worked with"
         declared, recomputed = used, against
         where = tuple(subject.claims[symbol].source.place for symbol in angle.shows_in)
-        said = f"No strut angle is declared, but shear was worked with {with_unit(against, 'deg', 3)}"
-        found = f"and torsion with {with_unit(used, 'deg', 3)} ({shown})."
+        said = f"No strut angle is declared for {here}: {there} {said_of_it} {with_unit(against, 'deg', 3)},"
+        found = f"but {here} was worked with {with_unit(used, 'deg', 3)} ({shown})."
     else:
         against, gravity, quantity = (
             math.atan2(1.0, angle.claim.value),

@@ -18,7 +18,8 @@ from checker.review.drafts import (
     direction_of,
     symbol_text,
 )  # fmt: skip
-from checker.review.solved import SIZES
+from checker.review.slips import load_slips
+from checker.review.solved import CHOICES, OTHERS
 from checker.review.stretch import Stretch
 from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
 from checker.sheet.shown import with_unit
@@ -29,7 +30,7 @@ def agrees(rule: Rule, subject: Subject) -> Outcome:
     """A declared value against the recomputed one; or an undeclared one that wrong values betray."""
     comparison = subject.compared.get(rule.quantity)
     if comparison is None:
-        betrayed = _betrayed(rule, subject, rule.quantity)
+        betrayed = betrayed_draft(rule, subject, rule.quantity)
         if betrayed is not None:
             return ended(rule, subject, FAIL), [betrayed]
         return ended(rule, subject, NOT_CHECKED, f"{symbol_text(rule.quantity)} is not declared"), []
@@ -46,10 +47,11 @@ def agrees(rule: Rule, subject: Subject) -> Outcome:
 
 
 def traced(rule: Rule, subject: Subject) -> Outcome:
-    """A size of the section that the declared values were not worked with."""
+    """A stated size, action or lever arm that the declared values were not worked with."""
     if not subject.compared:
         return ended(rule, subject, NOT_CHECKED, "no value is declared"), []
-    found = [draft for name in SIZES if (draft := _betrayed(rule, subject, name)) is not None]
+    stated = [name for name in OTHERS if name not in CHOICES or name in subject.claims]
+    found = [draft for name in stated if (draft := betrayed_draft(rule, subject, name)) is not None]
     return ended(rule, subject, FAIL if found else PASS), found
 
 
@@ -64,7 +66,7 @@ def _agrees_draft(rule: Rule, subject: Subject, comparison: Comparison) -> Draft
     above = subject.roots_of(symbol)
     cause = subject.explained.get(symbol)
     own = cause is not None and cause.quantity == symbol
-    says = " ".join(filter(None, (words.fill(rule.says), _reason(subject, comparison, above, cause))))
+    says = " ".join(filter(None, (words.fill(rule.says), reason(subject, comparison, above, cause))))
     implied = case.follow.get(f"cot_of_{symbol}")
     return draft_of(
         rule, subject, claim, quantity=symbol, unit=quantity.unit, clause=quantity.clause, key=symbol, says=says,
@@ -75,12 +77,12 @@ def _agrees_draft(rule: Rule, subject: Subject, comparison: Comparison) -> Draft
         working=working(case.sheet, comparison.reading, case.scratch),
         todo=rule.todo if not above else "Follows the root finding.",
         slip=cause.slip if cause and own else None, slips=cause.fits if cause and own else (),
-        shows_in=_others(cause, symbol) if cause and own else (),
-        wrong_working=_wrong_working(subject, cause) if cause and own else "",
+        shows_in=others(cause, symbol) if cause and own else (),
+        wrong_working=wrong_working_of(subject, cause) if cause and own else "",
     )  # fmt: skip
 
 
-def _reason(
+def reason(
     subject: Subject, comparison: Comparison, above: tuple[str, ...], cause: Explanation | None
 ) -> str:
     """Why the value is wrong: what it follows from, the slip that gives it, or that none is known."""
@@ -101,23 +103,26 @@ def _reason(
         return f"No known slip gives this value.{part}"
     if cause.slip is None:
         return f"No known slip gives this value; it is off by {cause.says}.{part}"
-    return f"The number comes out if {_slip_text(cause)}.{part}"
+    return f"The number comes out if {_slip_text(subject, cause)}.{part}"
 
 
-def _slip_text(cause: Explanation) -> str:
-    """The slip in words, with the ids of others that fit as well."""
-    others = [
-        name for name in cause.fits if name != " + ".join((cause.slip or "", *(s.id for s in cause.beside)))
-    ]
-    also = f" (equally possible: {', '.join(others)})" if others else ""
-    return cause.says + also
+def _slip_text(subject: Subject, cause: Explanation) -> str:
+    """The slip in words, and the others that fit as well."""
+    chosen = " + ".join((cause.slip or "", *(slip.id for slip in cause.beside)))
+    words = {slip.id: slip.says for slip in load_slips(subject.catalogue.office).slips}
+    others = [words[name] for name in cause.fits if name != chosen and name in words]
+    others = [text for text in dict.fromkeys(others) if text != cause.says]
+    if not others:
+        return cause.says
+    more = f", and {len(others) - 2} more" if len(others) > 2 else ""
+    return f"{cause.says} (it would also come out if {'; or if '.join(others[:2])}{more})"
 
 
-def _others(cause: Explanation, symbol: str) -> tuple[str, ...]:
+def others(cause: Explanation, symbol: str) -> tuple[str, ...]:
     return tuple(name for name in cause.shows_in if name != symbol)
 
 
-def _wrong_working(subject: Subject, cause: Explanation) -> str:
+def wrong_working_of(subject: Subject, cause: Explanation) -> str:
     """The working with the slip in it, on the designer's own numbers."""
     lines = []
     stretch = Stretch(subject.case, cause.shows_in[0])
@@ -128,26 +133,33 @@ def _wrong_working(subject: Subject, cause: Explanation) -> str:
     return "; ".join(lines)
 
 
-def _betrayed(rule: Rule, subject: Subject, name: str) -> Draft | None:
+def betrayed_draft(rule: Rule, subject: Subject, name: str) -> Draft | None:
     """A quantity that isn't declared, but that wrong declared values show to have been something else."""
-    cause = next((c for c in subject.explained.values() if c.quantity == name), None)
+    cause = _solved(subject, name)
     if cause is None:
         return None
     case, quantity = subject.case, subject.case.sheet.quantities[name]
-    right = float(case.scratch[name])
+    right = subject.claims[name].value if name in subject.claims else abs(float(case.scratch[name]))
     claims = [subject.claims[symbol] for symbol in cause.shows_in]
     used, recomputed = apart(cause.used, right, quantity.unit)
     shown = ", ".join(symbol_text(symbol) for symbol in cause.shows_in)
-    says = f"{_opening(name)} is not declared, but {shown} came out as if it were {used}; it is {recomputed}."
+    if name in OTHERS and (name in subject.claims or name in case.row):
+        says = f"{_opening(name)} is stated as {recomputed}, but {shown} came out as if it were {used}."
+    elif len(claims) > 1:
+        says = f"{_opening(name)} is not declared, but {shown} came out as if it were {used}; it is {recomputed}."
+    else:
+        says = (
+            f"{_opening(name)} is not declared; {shown} would come out with {used}, but it is {recomputed}."
+        )
     if cause.slip not in (None, "stale-value"):
-        says += f" That is so if {_slip_text(cause)}."
+        says += f" That is so if {_slip_text(subject, cause)}."
     wide = all(claim.source.member_wide for claim in claims)
     return draft_of(
         rule, subject, claims[0] if wide else None, quantity=name, unit=quantity.unit, key=name, says=says,
         clause=quantity.clause, recomputed=right, direction=direction_of(quantity.larger, cause.used, right),
         where=tuple(claim.source.place for claim in claims), declared_text="", slip=cause.slip, slips=cause.fits,
         shows_in=cause.shows_in, working=working(case.sheet, name, case.scratch),
-        wrong_working=_wrong_working(subject, cause),
+        wrong_working=wrong_working_of(subject, cause),
         todo="Work the values again with the right one, or say on what they rest.",
     )  # fmt: skip
 
@@ -158,13 +170,19 @@ def _opening(symbol: str) -> str:
     return f"The {text}" if " " in text else text
 
 
+def _solved(subject: Subject, name: str) -> Explanation | None:
+    """The cause that other declared values show in a quantity, with the value they were worked with."""
+    causes = (c for c in subject.explained.values() if c.quantity == name and math.isfinite(c.used))
+    return next(causes, None)
+
+
 def _root_text(subject: Subject, root: str) -> str:
     unit = subject.case.sheet.quantities[root].unit
-    claim = subject.claims.get(root)
-    if claim is not None:
-        return f"{symbol_text(root)} = {with_unit(claim.value, unit)}"
-    cause = next(c for c in subject.explained.values() if c.quantity == root)
-    return f"{symbol_text(root)} = {with_unit(cause.used, unit)} (not declared)"
+    cause = _solved(subject, root)
+    if cause is not None:
+        stated = (root in OTHERS and root in subject.case.row) or root in subject.claims
+        return f"{symbol_text(root)} = {with_unit(cause.used, unit)} ({'not what is stated' if stated else 'not declared'})"
+    return f"{symbol_text(root)} = {with_unit(subject.claims[root].value, unit)}"
 
 
 def basis(rule: Rule, subject: Subject) -> Outcome:

@@ -13,14 +13,15 @@ from functools import lru_cache
 from types import CodeType
 from typing import Any
 
-from checker.review.engine import ANGLES
 from checker.review.evaluated import Evaluated
+from checker.review.rounding import hidden_steps
 from checker.sheet.expression import Expression, scalar_code
 from checker.sheet.load import DECLARED
 from checker.sheet.program import scalar_namespace
 
 Formulas = Mapping[str, Expression]
 NAMESPACE = scalar_namespace()
+NOTHING: Mapping[str, Any] = {}
 
 
 @lru_cache(maxsize=4096)
@@ -47,19 +48,28 @@ class Stretch:
     def __init__(self, case: Evaluated, symbol: str) -> None:
         self.case = case
         self.symbol = symbol
-        self.inner = _inner(case, symbol)
-        self.base: dict[str, Any] = {**case.row, **case.shifted({symbol: math.nan})}
+        self.inner = (*case.between(symbol), symbol)
+        self.base: dict[str, Any] = {**self._free, **case.shifted({symbol: math.nan})}
         self._shifted: dict[str, dict[str, Any]] = {}
+
+    @property
+    def _free(self) -> dict[str, Any]:
+        """The inputs of the row, the symbol's own declared value set aside."""
+        return {**self.case.row, f"{self.symbol}{DECLARED}": math.nan}
 
     def __contains__(self, symbol: object) -> bool:
         return symbol in self.inner
 
-    def worked(self, replaced: Formulas, base: Mapping[str, Any] | None = None) -> dict[str, Any]:
-        """All values with wrong formulas in place; only what rests on them is worked again."""
-        values = dict(self.base if base is None else base)
-        changed: set[str] = set()
+    def worked(
+        self, replaced: Formulas, base: Mapping[str, Any] | None = None, fixed: Mapping[str, float] = NOTHING
+    ) -> dict[str, Any]:
+        """All values with wrong formulas in place, or with values fixed; only what rests on them is worked again."""
+        values = {**(self.base if base is None else base), **fixed}
+        changed: set[str] = set(fixed)
         quantities = self.case.sheet.quantities
         for name in self.inner:
+            if name in fixed:
+                continue
             wrong = replaced.get(name)
             if wrong is not None:
                 values[name] = value_of(wrong, values)
@@ -86,14 +96,7 @@ class Stretch:
 
     def with_value(self, name: str, value: float) -> float:
         """The declared quantity if a quantity of the stretch, or an input, had another value."""
-        values = {**self.base, name: value}
-        changed = {name}
-        for inner in self.inner:
-            formula = self.case.sheet.quantities[inner].formula
-            if inner != name and formula is not None and not changed.isdisjoint(formula.names):
-                values[inner] = value_of(formula, values)
-                changed.add(inner)
-        return float(values[self.symbol])
+        return float(self.worked(NOTHING, fixed={name: value})[self.symbol])
 
     def inherited(self, replaced: Formulas) -> float:
         """How far the rounding of the declared values above can move the result, wrong formulas in place."""
@@ -103,26 +106,20 @@ class Stretch:
             claim = self.case.claims[name]
             if name not in self._shifted:
                 moved = self.case.shifted({self.symbol: math.nan, name: claim.value + claim.half_step})
-                self._shifted[name] = {**self.case.row, **moved}
+                self._shifted[name] = {**self._free, **moved}
             change = abs(float(self.worked(replaced, self._shifted[name])[self.symbol]) - result)
             total += 0.0 if math.isnan(change) else change
+        return total + self._hidden_rounding(replaced, result)
+
+    def _hidden_rounding(self, replaced: Formulas, result: float) -> float:
+        """How far the usual rounding of undeclared numbers on the way can move the result."""
+        values = self.worked(replaced)
+        total = 0.0
+        for name, half in hidden_steps(self.inner[:-1], ()).items():
+            nudged = self.worked(replaced, fixed={name: float(values[name]) + half})
+            change = abs(float(nudged[self.symbol]) - result)
+            total += change if math.isfinite(change) else 0.0
         return total
-
-
-def _inner(case: Evaluated, symbol: str) -> tuple[str, ...]:
-    """Undeclared quantities above a declared one, up to the declared values and the strut angles; itself last."""
-    quantities = case.sheet.quantities
-    found = {symbol}
-    stack = [symbol]
-    while stack:
-        formula = quantities[stack.pop()].formula
-        for name in formula.names if formula is not None else ():
-            stop = name in case.claims or name in ANGLES or name.endswith(DECLARED)
-            if stop or name in found or quantities[name].is_input:
-                continue
-            found.add(name)
-            stack.append(name)
-    return tuple(name for name in case.sheet.order if name in found)
 
 
 def solve_back(work: Callable[[float], float], target: float, start: float) -> float | None:

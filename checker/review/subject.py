@@ -3,20 +3,22 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
+from functools import partial
 from typing import NamedTuple
 
 from checker.declared.model import Place
 from checker.geometry.facts import Fact
 from checker.review.bench import Explanation
 from checker.review.catalogue import Catalogue, Rule
-from checker.review.causes import Causes, find_causes
+from checker.review.causes import Causes
 from checker.review.claims import Claim
 from checker.review.compare import Comparison, compare_all
 from checker.review.drafts import UNSAFE_SIDE, Check, Draft, Words
 from checker.review.evaluated import Evaluated
-from checker.review.explain import Reasoner
+from checker.review.explain import reasoned
 from checker.review.slips import load_slips
+from checker.review.variants import Variant
 from checker.review.window import Window, window_of
 
 
@@ -40,22 +42,35 @@ class Subject(NamedTuple):
         """What a carried value hangs on: declared roots, or the undeclared quantity they show."""
         above = self.causes.carried.get(symbol, (symbol,) if symbol in self.causes.roots else ())
         named = (self.explained[root].quantity if root in self.explained else root for root in above)
-        return tuple(root for root in dict.fromkeys(named) if root != symbol)
+        roots = [root for root in dict.fromkeys(named) if root != symbol]
+        return tuple(sorted(roots, key=self._right_by))
+
+    def _right_by(self, root: str) -> float:
+        """How near a root is to right: what is furthest off is named first as the cause."""
+        comparison = self.compared.get(root)
+        if comparison is None or not comparison.recomputed * comparison.claim.value > 0:
+            return -math.inf
+        return -abs(math.log(comparison.claim.value / comparison.recomputed))
 
 
 Outcome = tuple[Check, list[Draft]]
 
 
 def subject_of(
-    case: Evaluated, catalogue: Catalogue, facts: Mapping[str, Fact], places: Mapping[str, Place]
+    case: Evaluated,
+    catalogue: Catalogue,
+    facts: Mapping[str, Fact],
+    places: Mapping[str, Place],
+    variants: Callable[[], tuple[Variant, ...]] = tuple,
 ) -> Subject:
-    """Compare, find causes, open the window: all that rules look at."""
+    """Compare, find causes, open the window: all that rules look at.
+
+    `variants` gives the misreadings of the steel, asked for only where nothing else explains a wrong value.
+    """
     compared = compare_all(case, catalogue)
-    causes = find_causes(case, compared, _broken_choices(case))
-    explained: dict[str, Explanation] = {}
-    if causes.roots:
-        for cause in Reasoner(case, compared, causes, load_slips(catalogue.office)).explain():
-            explained |= dict.fromkeys(cause.shows_in, cause)
+    known = partial(load_slips, catalogue.office)
+    causes, found = reasoned(case, compared, _broken_choices(case), known, variants)
+    explained = {symbol: cause for cause in found for symbol in cause.shows_in}
     return Subject(case, catalogue, compared, causes, window_of(case.scratch), facts, places, explained)
 
 

@@ -30,8 +30,12 @@ class Variant(NamedTuple):
     changes: Mapping[str, Any]
 
 
-def variants_of(design: Design) -> Iterator[Variant]:
+def variants_of(design: Design) -> tuple[Variant, ...]:
     """Every single misreading of the steel that can be built."""
+    return tuple(_built(design))
+
+
+def _built(design: Design) -> Iterator[Variant]:
     original = member_row(design, measure(design))
     for id_, says, changed in _changed_designs(design):
         try:

@@ -75,6 +75,8 @@ def working(sheet: Sheet, symbol: str, values: Mapping[str, Any], wrong: Express
     numbers = in_numbers(sheet, symbol, values, wrong)
     if quantity.unit in INSIDE_UNIT:
         result = f"{number(float(values[symbol]), DIGITS)} {INSIDE_UNIT[quantity.unit]} = {result}"
+    if isinstance(formula.tree, ast.Name | ast.Constant):  # taken over as it is: no need to say it twice
+        numbers = symbols
     parts = [paper(symbol), symbols, numbers, result]
     shown = [part for index, part in enumerate(parts) if index == 0 or part != parts[index - 1]]
     return " = ".join(shown)

@@ -126,7 +126,7 @@ def random_rows(rows: int) -> dict[str, object]:
     return table
 
 
-def alternate(ours, yardstick, rounds: int) -> tuple[float, float, float]:  # noqa: ANN001
+def alternate(ours, yardstick, rounds: int) -> tuple[float, float, float]:
     """Medians in ms, and the median of the ratios of neighbouring runs."""
     ours(), yardstick()
     pairs = []

@@ -214,3 +214,29 @@ def test_bad_office_files_are_faults_with_places(tmp_path, capsys, text, said):
 def test_unknown_annex(capsys):
     assert main(["audit", SOUND, "--annex", "atlantis"]) == 2
     assert "no such annex; known are recommended, uk" in capsys.readouterr().err
+
+
+def test_a_report_is_never_written_over_what_is_audited(tmp_path, capsys):
+    path = tmp_path / "beam.json"
+    path.write_bytes((ROOT / "examples/market-hall/link-bridge-box.json").read_bytes())
+    before = path.read_bytes()
+    for given in (path, tmp_path):
+        assert main(["audit", str(given), "-o", str(path)]) == 2
+        assert "is one of the files to audit" in capsys.readouterr().err
+    assert path.read_bytes() == before
+
+
+def test_an_unknown_annex_in_one_file_leaves_the_others(tmp_path, capsys):
+    path = tmp_path / "beam.yaml"
+    text = (ROOT / "examples/market-hall/edge-beam-sound.yaml").read_text(encoding="utf-8")
+    path.write_text(text.replace("annex: recommended", "annex: atlantis"), encoding="utf-8")
+    assert main(["audit", str(path), SOUND]) == 2
+    captured = capsys.readouterr()
+    assert "beam.yaml:6:1: annex: atlantis: no such annex; known are recommended, uk" in captured.err
+    assert captured.out.count("Member EB-01") == 1
+
+
+def test_the_same_file_twice_is_one_member(capsys):
+    main(["audit", SOUND, SOUND, str(ROOT / "examples/market-hall"), "--format", "json"])
+    members = [member["member"] for member in json.loads(capsys.readouterr().out)["members"]]
+    assert members.count("EB-01") == 1

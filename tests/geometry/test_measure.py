@@ -15,7 +15,8 @@ from checker.geometry.links import eta_leg
 from checker.geometry.measure import measure
 from checker.geometry.outline import circle
 
-KEYS = """h b_least A u kappa A_c y_c t_wall c_axis b_w_sagging b_w_hogging b_t_sagging b_t_hogging cover
+KEYS = """h b_least A u kappa A_c y_c t_wall thickness
+reentrant_corners c_axis b_w_sagging b_w_hogging b_t_sagging b_t_hogging cover
 a_s_bottom a_s_top A_s_bottom A_s_top A_half_bottom A_half_top A_s_all phi_link s_perimeter s_links
 n_legs A_sw_s_all A_leg_s S_sin S_cos alpha eta_leg leg_gap gap_bars phi_long_max n_flanges torsion_parts"""
 TEE = (
@@ -35,7 +36,7 @@ def test_measured_beam_by_hand(sound_beam):
     area = {phi: pi * phi**2 / 4 for phi in (12, 20, 25)}
     expected = {
         "h": 700, "b_least": 400, "A": 280_000, "u": 2200, "kappa": 4, "A_c": 280_000, "y_c": 350,
-        "t_wall": inf,
+        "t_wall": inf, "thickness": 400, "reentrant_corners": 0,
         "c_axis": 57.5, "b_w_sagging": 400, "b_w_hogging": 400, "b_t_sagging": 400, "b_t_hogging": 400,
         "cover": 35, "a_s_bottom": 57.5, "a_s_top": 55, "A_s_bottom": 4 * area[25], "A_s_top": 3 * area[20],
         # Side bars stand at thirds between the chords: 2 x (1/3 + 2/3) of them count to each.
@@ -148,7 +149,7 @@ def test_lengths_scale_and_areas_scale_by_the_square(build, factor, low, high, s
 
     one, other = inputs(1.0), inputs(factor)
     power = dict.fromkeys(KEYS.split(), 1) | dict.fromkeys(
-        ("kappa", "n_legs", "alpha", "eta_leg", "S_cos", "n_flanges", "torsion_parts"), 0
+        ("kappa", "reentrant_corners", "n_legs", "alpha", "eta_leg", "S_cos", "n_flanges", "torsion_parts"), 0
     )
     power |= {key: 2 for key in power if key == "A" or key.startswith(("A_c", "A_s_", "A_half"))}
     assert dict(other) == pytest.approx({key: one[key] * factor ** power[key] for key in one}, rel=1e-9)

@@ -206,3 +206,13 @@ def test_a_point_on_a_straight_line_is_no_corner():
     assert polygons.convex_corners(points) == (0, 2, 3, 4)
     assert polygon(points).kappa == pytest.approx(4)
     assert polygons.inset_corner(points, 1, 40.0, 40.0) == pytest.approx((100, 40))
+
+
+def test_thickness_is_the_thinnest_part_between_facing_sides() -> None:
+    """A hand-made tee: 180 mm of flange, a web of 575; a chamfer is no part of its own."""
+    tee = ((0.0, 0.0), (575.0, 0.0), (575.0, 1120.0), (775.0, 1120.0), (775.0, 1300.0), (0.0, 1300.0))
+    assert polygons.least_thickness(tee) == pytest.approx(180.0)
+    chamfered = ((30.0, 0.0), (370.0, 0.0), (400.0, 30.0), (400.0, 700.0), (0.0, 700.0), (0.0, 30.0))
+    assert polygons.least_thickness(chamfered) == pytest.approx(400.0)
+    turned = tuple((x * 0.6 - y * 0.8, x * 0.8 + y * 0.6) for x, y in tee)
+    assert polygons.least_thickness(turned) == pytest.approx(180.0)

@@ -18,7 +18,7 @@ from checker.declared.build import load_text
 from tests.properties.members import SHAPES
 from tests.properties.sound import sound_design
 
-DESIGNS = 40
+DESIGNS = 24
 Tree = dict[str, Any]
 
 

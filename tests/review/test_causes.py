@@ -189,7 +189,7 @@ def test_a_leg_basis_said_wrongly(symbol: str) -> None:
     assert set(found) == {"links.leg-basis"}
     assert found["links.leg-basis"].quantity == symbol
     assert f"said to count {wrong}" in found["links.leg-basis"].says
-    assert f"what {right} need" in found["links.leg-basis"].says
+    assert f"the number is that of {right}" in found["links.leg-basis"].says
 
 
 def test_a_leg_basis_unsaid_but_shown_by_the_total() -> None:
