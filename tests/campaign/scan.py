@@ -37,7 +37,15 @@ class Truss:
     @cached_property
     def without_links(self) -> bool:
         """Only minimum links are needed (6.3.2(5), 6.2.1(3))."""
-        return self.right["crack_sum"] <= 1 and (self.m.shape.kind == "rectangle" or not self.a.T)
+        return self.right["crack_sum"] <= 1 and (self._is_rectangle or not self.a.T)
+
+    @property
+    def _is_rectangle(self) -> bool:
+        """A solid rectangle, also where it is given by its corners."""
+        points = self.m.shape.points
+        if self.m.shape.kind != "polygon":
+            return self.m.shape.kind == "rectangle"
+        return len({x for x, _ in points}) == len({y for _, y in points}) == 2
 
     @cached_property
     def tilt(self) -> float:
