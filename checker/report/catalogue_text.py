@@ -8,6 +8,7 @@ from collections.abc import Iterable
 
 from checker import shipped
 from checker.review.catalogue import BY_WINDOW, Catalogue, Rule
+from checker.review.drafts import symbol_text
 from checker.review.slips import Slip
 from checker.sheet.quantities import Quantity, Sheet
 from checker.sheet.shown import paper
@@ -81,7 +82,8 @@ def rule_text(rule: Rule) -> str:
 
 def tolerance_text(rule: Rule) -> str:
     if rule.kind == "agrees":
-        return f"its own rounding, the rounding it inherits, and {rule.tolerance * 100:g} %"
+        of = f" (of {symbol_text(rule.scale)} where that is larger)" if rule.scale else ""
+        return f"its own rounding, the rounding it inherits, and {rule.tolerance * 100:g} %{of}"
     if rule.tolerance:
         return f"{rule.tolerance * 100:g} % and the rounding of what is declared"
     return "none"

@@ -137,7 +137,7 @@ class Bench:
         result = stretch.result(replaced)
         if not math.isfinite(result):
             return True
-        allowed = comparison.claim.half_step + comparison.rule.tolerance * abs(comparison.recomputed)
+        allowed = comparison.claim.half_step + comparison.relative(comparison.recomputed)
         if abs(result - comparison.claim.value) <= allowed:
             return False
         return abs(result - comparison.claim.value) > allowed + stretch.inherited(replaced)

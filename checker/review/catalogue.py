@@ -44,6 +44,8 @@ class Rule(NamedTuple):
         says, todo: sentences with `{placeholders}`.
         quantity, or_: for `agrees` the symbol, and readings that are right as well; for a limit on a choice the choice,
             so that a value beyond it is traced and named like any other.
+        scale: for `agrees`, a quantity whose size the tolerance is a share of where it is larger than the value itself:
+            the terms of a small difference.
         quantities: for `same`, `implied`, `basis`.
         provided, limit: for `at_most` and `at_least`.
         fact, flag: for `holds`: a fact measured from the geometry, or a flag of the sheet.
@@ -63,6 +65,7 @@ class Rule(NamedTuple):
     tolerance: float = 0.0
     quantity: str = ""
     or_: tuple[str, ...] = ()
+    scale: str = ""
     quantities: tuple[str, ...] = ()
     provided: tuple[str, ...] = ()
     limit: str = ""
@@ -75,7 +78,7 @@ class Rule(NamedTuple):
     @property
     def symbols(self) -> tuple[str, ...]:
         """Every symbol of the sheet the rule speaks of, `X_declared` included."""
-        single = (self.quantity, self.limit, self.flag, self.applies)
+        single = (self.quantity, self.scale, self.limit, self.flag, self.applies)
         return tuple(s for s in (*single, *self.or_, *self.quantities, *self.provided) if s)
 
 

@@ -1,6 +1,7 @@
 """A declared value against the recomputed one: rounding first, then the rule's relative tolerance.
 
 A value agrees when |declared - recomputed| <= own rounding + inherited rounding + relative tolerance.
+The relative tolerance of a small difference is a share of its terms (`scale` in the rule).
 It *follows* when the same holds against the value recomputed from the designer's own upstream numbers.
 """
 
@@ -25,6 +26,7 @@ class Comparison(NamedTuple):
         recomputed: its value from scratch.
         upstream: its value from the designer's own upstream numbers.
         tolerance: the whole allowance: rounding, inherited rounding, relative tolerance.
+        scale: size of the terms that the value is a difference of; 0 where it is none.
         agrees: right from scratch.
         follows: right from the designer's own upstream numbers.
     """
@@ -37,6 +39,11 @@ class Comparison(NamedTuple):
     tolerance: float
     agrees: bool
     follows: bool
+    scale: float = 0.0
+
+    def relative(self, value: float) -> float:
+        """The rule's relative tolerance of a value (inside units)."""
+        return self.rule.tolerance * max(abs(value), self.scale)
 
 
 def compare_all(case: Evaluated, catalogue: Catalogue) -> dict[str, Comparison]:
@@ -58,17 +65,19 @@ def compare(case: Evaluated, claim: Claim, rule: Rule) -> Comparison:
     from_scratch = {name: float(case.scratch[name]) for name in readings}
     reading = _nearest(claim.value, from_scratch)
     recomputed = from_scratch[reading]
-    allowed = claim.half_step + rule.tolerance * abs(recomputed)
+    scale = abs(float(case.scratch[rule.scale])) if rule.scale else 0.0
+    allowed = claim.half_step + rule.tolerance * max(abs(recomputed), scale)
     if _within(claim.value, recomputed, allowed):
-        return Comparison(claim, rule, reading, recomputed, recomputed, allowed, True, True)
+        return Comparison(claim, rule, reading, recomputed, recomputed, allowed, True, True, scale)
     from_upstream = case.upstream(symbol, readings)
     follows_reading = _nearest(claim.value, from_upstream)
     upstream = from_upstream[follows_reading]
     inherited = case.inherited(symbol, follows_reading)
-    follows = _within(claim.value, upstream, claim.half_step + inherited + rule.tolerance * abs(upstream))
+    following = claim.half_step + inherited + rule.tolerance * max(abs(upstream), scale)
+    follows = _within(claim.value, upstream, following)
     allowed += inherited
     agrees = _within(claim.value, recomputed, allowed)
-    return Comparison(claim, rule, reading, recomputed, upstream, allowed, agrees, follows)
+    return Comparison(claim, rule, reading, recomputed, upstream, allowed, agrees, follows, scale)
 
 
 def _nearest(value: float, readings: dict[str, float]) -> str:

@@ -34,6 +34,7 @@ BOUNDS: dict[str, float] = {
     "one slip: root right": 99.5,
     "one slip: one root": 99,
     "one slip: first, or one of the same value": 97,
+    "one slip: first, where no other": 97,
     "one slip: named": 99.5,
     "half: found": 100,
     "half: named": 99,

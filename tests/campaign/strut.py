@@ -37,9 +37,9 @@ def expected(truss: Truss, cot: float) -> tuple[str, bool]:
     return ("as claimed" if span[0] <= cot <= span[1] else "on another angle"), near
 
 
-def truss_of(job: Job) -> Truss:
-    """With the lever arm that is declared, cut back to the largest that may be used."""
-    return Truss(job.m, job.case.actions, None if job.z is None else min(job.z, job.most_z))
+def truss_of(job: Job, z: float | None) -> Truss:
+    """With the lever arm z (mm) that is declared, cut back to the largest that may be used."""
+    return Truss(job.m, job.case.actions, None if z is None else min(z, job.most_z))
 
 
 def changed(rng: Random, job: Job) -> Job:
@@ -75,7 +75,7 @@ def windows(seed: int, tally: Tally) -> None:
     (case,) = audit(load_text(text, "campaign.yaml")).members[0].cases
     if case.values["M_Eds"] > case.values["M_lim"]:
         return  # needs compression bars, for which the chain of formulas has no lever arm
-    truss = truss_of(job)
+    truss = truss_of(job, job.z)
     scanned = windows_of(truss)
     for name, span in scanned.items():
         tally.count(
@@ -122,7 +122,8 @@ def steel_by_slip(seed: int, tally: Tally) -> None:
     if any(float(text) < 0 for text in stated.values()):
         return
     seen = look(job.text(stated))
-    holds, near = expected(truss_of(job), job.cot)
+    lever = float(stated["z"]) if "z" in stated else None
+    holds, near = expected(truss_of(job, lever), job.cot)
     if near:
         return
     window_: Window = seen.member.cases[0].window

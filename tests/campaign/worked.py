@@ -163,6 +163,13 @@ class Job:
         z_b = At(self.m, self.case.actions, self.cot, self.right, 0.0).bent[0]
         return z_b if self.case.actions.N else max(0.9 * self.right["d"], z_b)
 
+    def scale(self, symbol: str) -> float:
+        """The steel for the moment alone, of which that with axial force may be a small difference (mm2)."""
+        if symbol not in ("A_s_bending", "A_s_tension"):
+            return 0.0
+        z_b, about = At(self.m, self.case.actions, self.cot, self.right, 0.0).bent
+        return about / (z_b * self.right["f_yd"])
+
     def held_to(self, sheet: Sheet, declared: set[str]) -> Job:
         """The same job with the lever arm that is declared, where it may be used: it is the designer's choice."""
         if "z" not in declared or self.moved(sheet, "z"):
@@ -172,11 +179,11 @@ class Job:
     def moved(self, sheet: Sheet, symbol: str) -> bool:
         """Whether a printed value is beyond rounding and tolerance of every right reading (before inheritance)."""
         value = float(sheet.printed[symbol]) * UNIT.get(symbol, 1.0)
-        share = TOLERANCE.get(symbol, 0.01)
+        share, scale = TOLERANCE.get(symbol, 0.01), self.scale(symbol)
         if symbol == "z":  # a choice: only above its limit is it wrong
             return value > self.most_z * (1 + share) + self.half_step("z")
         return all(
-            abs(value - right) > self.half_step(symbol) + share * abs(right) + 1e-9 * abs(right)
+            abs(value - right) > self.half_step(symbol) + share * max(abs(right), scale) + 1e-9 * abs(right)
             for right in (self.right[symbol], *self.readings.get(symbol, ()))
         )
 
@@ -211,13 +218,13 @@ class Job:
         A value that follows from its rounded neighbours may part from the right one by their rounding twice over.
         """
         value = float(sheet.printed[symbol]) * UNIT.get(symbol, 1.0)
-        share = TOLERANCE.get(symbol, 0.01)
+        share, scale = TOLERANCE.get(symbol, 0.01), self.scale(symbol)
         rounding = max(self.inherited(symbol, {}, declared), self.inherited(symbol, wrong, declared))
         slack = self.half_step(symbol) + 2 * rounding
         if symbol == "z":
             return value > self.most_z * (1 + share) + slack
         return all(
-            abs(value - right) > 1.001 * (slack + share * abs(right))
+            abs(value - right) > 1.001 * (slack + share * max(abs(right), scale))
             for right in (self.right[symbol], *self.readings.get(symbol, ()))
         )
 
