@@ -130,12 +130,16 @@ def audit_member(
 
 def engine_for(design: Design, measured: Measured, options: Options) -> Engine:
     """The compiled sheet that a design's standard, annex, shape and links call for."""
+    return engine(design.standard, _annex_of(design, options), layers_for(measured), options.rules)
+
+
+def layers_for(measured: Measured) -> tuple[str, ...]:
+    """The layers that a measured section and its links call for."""
     aslant = (
         abs(measured.inputs["S_sin"] - measured.inputs["A_sw_s_all"]) > 1e-9 * measured.inputs["A_sw_s_all"]
     )
     aslant = aslant or measured.inputs["S_cos"] > 1e-9
-    layers = shape_layers(measured.shape, aslant=aslant, parts=measured.inputs["torsion_parts"] > 0)
-    return engine(design.standard, _annex_of(design, options), layers, options.rules)
+    return shape_layers(measured.shape, aslant=aslant, parts=measured.inputs["torsion_parts"] > 0)
 
 
 def _annex_of(design: Design, options: Options) -> str:
