@@ -79,7 +79,8 @@ def suspects(screen: Screen, block: Block) -> Flags:
             applies = np.asarray(look.value(rule.applies), dtype=bool) if rule.applies else np.True_
             if applies.any():
                 held |= applies & (_KINDS[rule.kind](look, rule) if rule.kind in _KINDS else True)
-        return held | look.parted()
+        result: Flags = held | look.parted()
+        return result
 
 
 class _Look:
@@ -114,11 +115,10 @@ class _Look:
         import numpy as np
 
         shear, torsion = (self.value(angle) for angle in ANGLES)
-        claims = [self.claim(angle) for angle in ANGLES]
-        if all(claim is not None for claim in claims):
-            both = np.isfinite(claims[0]) & np.isfinite(claims[1])
-        else:
-            both = False
+        both: Any = True
+        for angle in ANGLES:
+            claim = self.claim(angle)
+            both = both & (np.isfinite(claim) if claim is not None else np.False_)
         apart = np.abs(shear - torsion) > 0.5 * AGREE * np.maximum(shear, torsion)
         return apart & np.asarray(self.value("has_both"), dtype=bool) & ~np.asarray(both)
 
