@@ -8,6 +8,8 @@ from collections.abc import Mapping
 from checker.declared.build_section import build_materials, build_section
 from checker.declared.build_steel import build_bars, build_cases, build_links
 from checker.declared.check import check_record
+from checker.declared.details import details_of
+from checker.declared.details_format import OF_MEMBER
 from checker.declared.format import FORMAT, STANDARD
 from checker.declared.found import Faults, Values
 from checker.declared.model import BarGroup, Case, Design, LinkSet, Materials, Number, Place, Section
@@ -116,4 +118,5 @@ def _assemble(
         bars=tuple(bars),
         cases=tuple(cases),
         places=values.key_places,
+        details=details_of(values, OF_MEMBER),
     )

@@ -5,6 +5,8 @@ from __future__ import annotations
 import math
 from itertools import count
 
+from checker.declared.details import details_of
+from checker.declared.details_format import OF_CASE
 from checker.declared.flanges import FLANGED
 from checker.declared.found import Faults, Values
 from checker.declared.model import BarGroup, Case, DeclaredValue, LinkSet, Number, Place, Section, WebFlange
@@ -33,6 +35,10 @@ def build_links(sets: list[Values], faults: Faults) -> list[LinkSet]:
             )
             continue
         angle = values.get("angle", Number)
+        at = values.get("at", list)
+        if at is not None and (where != "inner" or len(at) != legs):
+            faults.add(values.spot("at"), f"at gives the place of each leg of an inner link, here {legs}")
+            continue
         links.append(
             LinkSet(
                 mark=mark,
@@ -45,6 +51,10 @@ def build_links(sets: list[Values], faults: Faults) -> list[LinkSet]:
                 lap=values.get("lap", Number),
                 tail=values.get("tail", Number),
                 place=values.place,
+                f_ywk=values.get("f_ywk", Number),
+                mandrel=values.get("mandrel", Number),
+                lap_on=values.get("lap_on", str),
+                at=tuple(number.value for number in values.get("at", list) or ()),
             )
         )
     return links
@@ -91,6 +101,7 @@ def build_cases(
                 verdict=verdict,
                 place=values.place,
                 web_flange=_web_flange(values.get("web_flange", Values), section, faults),
+                details=details_of(values, OF_CASE),
             )
         )
     return built
@@ -138,7 +149,11 @@ def _bar_group(values: Values, mark: str, corners: int | None, faults: Faults) -
             )
         return None
     layer = values.get("layer", int) or 1
-    return BarGroup(mark, face, expected, diameter, layer, at, values.place)
+    said = values.get("anchored", str)
+    return BarGroup(
+        mark, face, expected, diameter, layer, at, values.place, values.get("bundle", int) or 1,
+        values.get("mandrel", Number), None if said is None else said == "fully",
+    )  # fmt: skip
 
 
 def _marks(items: list[Values], letter: str, faults: Faults) -> list[str]:

@@ -168,6 +168,17 @@ def check_points(node: Node, field: Field, faults: Faults) -> list[tuple[Number,
     return points if len(faults.found) == before else None
 
 
+def check_numbers(node: Node, field: Field, faults: Faults) -> list[Number] | None:
+    """A list of numbers, such as places across the web."""
+    if not isinstance(node, Sequence):
+        faults.add(node, f"{field.key}: {found(node)}; expected a list of numbers")
+        return None
+    before = len(faults.found)
+    one = Field(field.key, "number", "", unit=field.unit, least=-MAX_COORDINATE, most=MAX_COORDINATE)
+    numbers = [number for item in node.items if (number := check_number(item, one, faults)) is not None]
+    return numbers if len(faults.found) == before else None
+
+
 def check_bar_callout(node: Node, field: Field, faults: Faults) -> tuple[int, Number] | None:
     """Count and diameter from a short form such as 4H25."""
     callout = parse_bars(node.text.strip()) if isinstance(node, Scalar) else None

@@ -19,6 +19,7 @@ Kind = Literal[
     "record",  # a map described by a record
     "records",  # a list of such maps
     "points",  # a list of [x, y]
+    "numbers",  # a list of numbers
     "area",  # a link area: a number, or a map with value and counts
     "section",  # a map described by the record its shape names
     "bar callout",

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from checker.declared.details_format import DETAIL_RECORDS, OF_CASE, OF_MEMBER
 from checker.declared.fields import Field, Form, Record
 from checker.declared.shapes_format import MAX_SIZE, SHAPES, SPANS, WALLS
 from checker.declared.symbols import DECLARABLE, LINK_AREAS, MEANINGS, STRUT_ANGLES
@@ -59,6 +60,26 @@ _LINKS = Record(
         Field("angle", "number", "Angle to the member axis; 90 if left out.", unit="deg", above=0, most=90),
         Field("lap", "number", "Length of the lap.", unit="mm", least=1, most=10_000),
         Field("tail", "number", "Straight length after a hook.", unit="mm", least=1, most=10_000),
+        Field(
+            "f_ywk",
+            "number",
+            "Yield strength of this set, where it is another.",
+            unit="MPa",
+            least=100,
+            most=2000,
+        ),
+        Field(
+            "mandrel",
+            "number",
+            "Diameter of the mandrel the bends are made on.",
+            unit="mm",
+            least=1,
+            most=2000,
+        ),
+        Field("lap_on", "choice", "Which leg the lap lies on.", choices=("side", "top", "bottom")),
+        Field(
+            "at", "numbers", "Places of an inner set's legs across the web, from its left side.", unit="mm"
+        ),
     ),
     (Form(("links",)), Form(("diameter", "spacing"))),
 )
@@ -96,6 +117,22 @@ _BARS = Record(
             least=1,
             most=200,
         ),
+        Field(
+            "bundle",
+            "count",
+            "Bars in each bundle; 1 if left out. count then counts the bundles.",
+            least=1,
+            most=4,
+        ),
+        Field(
+            "mandrel",
+            "number",
+            "Diameter of the mandrel the bends are made on.",
+            unit="mm",
+            least=1,
+            most=2000,
+        ),
+        Field("anchored", "choice", "Anchored beyond the section.", choices=("fully", "not")),
     ),
     (Form(("bars",)), Form(("diameter",), ("count",))),
 )
@@ -165,6 +202,7 @@ _CASE = Record(
             "kNm",
         ),
         Field("web_flange", "record", _WEB_FLANGE.doc, record="web_flange"),
+        *(Field(name, "record", DETAIL_RECORDS[name].doc, record=name) for name in OF_CASE),
         Field("declared", "record", "Numbers for this case; they win over the member's.", record="declared"),
     ),
 )
@@ -210,6 +248,7 @@ FORMAT = Record(
             least=1,
             most=1000,
         ),
+        *(Field(name, "record", DETAIL_RECORDS[name].doc, record=name) for name in OF_MEMBER),
         Field("aggregate", "number", "Largest size of the aggregate.", False, "mm", least=1, most=200),
         Field("links", "records", "The sets of links.", required=True, least=0, record="links"),
         Field("bars", "records", "The longitudinal bars.", required=True, least=1, record="bars"),
@@ -231,6 +270,7 @@ RECORDS: dict[str, Record] = {
         _WEB_FLANGE,
         _CASE,
         _SUBMISSION,
+        *DETAIL_RECORDS.values(),
     )
 }
 """Every record a field can name."""

@@ -81,7 +81,9 @@ class LinkSet(NamedTuple):
     """One set of links: `where` is "perimeter", "inner" or "flange"; `angle` to the member axis in rad.
 
     - `ends` is hooks_135, hooks_90, lapped, welded or open; None where it is unsaid.
-    - `lap` is the lap length, `tail` the straight length after a hook, both in mm.
+    - `lap` is the lap length, `tail` the straight length after a hook, `mandrel` the diameter it is bent on, in mm.
+    - `f_ywk` in MPa where the set is of another grade; `lap_on` is side, top or bottom.
+    - `at` has the places of an inner set's legs across the web in mm from its left side.
     """
 
     mark: str
@@ -94,6 +96,10 @@ class LinkSet(NamedTuple):
     lap: Number | None = None
     tail: Number | None = None
     place: Place = NOWHERE
+    f_ywk: Number | None = None
+    mandrel: Number | None = None
+    lap_on: str | None = None
+    at: tuple[float, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -103,6 +109,7 @@ class BarGroup:
     - `layer` counts from 1 at the outside.
     - `at` has exact places in mm from the lower left corner of the bounding box; for a polygon, in its own
       coordinates.
+    - `bundle` bars at each place; `count` counts the places. `anchored` says whether they go on beyond the section.
     """
 
     mark: str
@@ -112,6 +119,14 @@ class BarGroup:
     layer: int = 1
     at: tuple[tuple[float, float], ...] = ()
     place: Place = NOWHERE
+    bundle: int = 1
+    mandrel: Number | None = None
+    anchored: bool | None = None
+
+    @property
+    def size(self) -> float:
+        """Diameter of the bar, or of the one bar a bundle counts as, mm (8.9.1(2))."""
+        return self.diameter.value * math.sqrt(self.bundle)
 
 
 class DeclaredValue(NamedTuple):
@@ -158,10 +173,14 @@ class Case(NamedTuple):
     verdict: tuple[str, Place] | None = None
     place: Place = NOWHERE
     web_flange: WebFlange | None = None
+    details: Mapping[str, float] = {}
 
 
 class Design(NamedTuple):
-    """A whole declared file; `places` has the place of each top-level key that stands in it."""
+    """A whole declared file; `places` has the place of each top-level key that stands in it.
+
+    `details` (also of a case) are inputs of the sheet that only detailing rules ask for.
+    """
 
     file: str
     sha256: str
@@ -178,3 +197,4 @@ class Design(NamedTuple):
     bars: tuple[BarGroup, ...]
     cases: tuple[Case, ...]
     places: Mapping[str, Place] = {}
+    details: Mapping[str, float] = {}

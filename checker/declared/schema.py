@@ -115,6 +115,9 @@ def _holds(field: Field) -> Schema:
             return {"type": "array", "items": {"$ref": f"#/$defs/{field.record}"}, "minItems": field.least}
         case "points":
             return _points(field)
+        case "numbers":
+            one = Field(field.key, "number", "", unit=field.unit, least=-MAX_COORDINATE, most=MAX_COORDINATE)
+            return {"type": "array", "items": _number(one)}
         case "section":
             return {"$ref": "#/$defs/section"}
         case "bar callout" | "link callout":

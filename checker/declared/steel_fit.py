@@ -126,7 +126,7 @@ def bar_faults(
 def _beyond(section: Section, group: BarGroup, inset: float, clear: float) -> str:
     """Why the group's layer can't be where its face and number put it; empty if it can."""
     width, height = width_and_height(section)
-    phi = group.diameter.value
+    phi = group.size
     if section.shape == "circle" and group.face not in ("round", "corners"):
         return f"a circle has no flat {group.face}; use face: round, or exact places (at)"
     flat = group.face in FLAT_FACES
@@ -158,7 +158,7 @@ def _in_void(section: Section, group: BarGroup, reach: float) -> str:
 def _crowded_round(section: Section, group: BarGroup, inset: float) -> str:
     if group.face != "round":
         return ""
-    phi = group.diameter.value
+    phi = group.size
     if section.shape == "circle":
         radius = section.sizes["diameter"].value / 2 - inset - phi / 2
         apart = 2 * radius * math.sin(math.pi / group.count) if group.count > 1 else math.inf
@@ -175,11 +175,11 @@ def _crowded_faces(section: Section, bars: list[tuple[BarGroup, Place]], inset: 
         if not group.at and group.face in FLAT_FACES:
             rows.setdefault((group.face, group.layer), []).append((group, spot))
     for (face, _), row in rows.items():
-        largest = max(group.diameter.value for group, _ in row)
+        largest = max(group.size for group, _ in row)
         room = _room(section, face, inset, largest)
         if face in ("left", "right") and room is not None:
             room -= _corner_steel(bars)
-        needed = sum(group.count * group.diameter.value for group, _ in row)
+        needed = sum(group.count * group.size for group, _ in row)
         if room is not None and needed > room + _SLACK:
             group, spot = row[-1]
             size = f"{needed:g} mm of bars side by side in {max(room, 0.0):g} mm between the links"
@@ -202,7 +202,7 @@ def _corner_steel(bars: list[tuple[BarGroup, Place]]) -> float:
     taken = 0.0
     for face in ("bottom", "top"):
         taken += max(
-            (g.diameter.value for g, _ in bars if g.layer == 1 and not g.at and g.face in (face, "corners")),
+            (g.size for g, _ in bars if g.layer == 1 and not g.at and g.face in (face, "corners")),
             default=0.0,
         )
     return taken
@@ -210,7 +210,7 @@ def _corner_steel(bars: list[tuple[BarGroup, Place]]) -> float:
 
 def _misplaced(section: Section, group: BarGroup) -> Iterator[str]:
     """Bars at exact places that aren't wholly in the concrete."""
-    radius = group.diameter.value / 2
+    radius = group.size / 2
     outline = outline_of(section)
     for x, y in group.at:
         if section.shape == "circle":
@@ -235,10 +235,10 @@ def _void_distance(section: Section, x: float, y: float) -> float:
 def _overlaps(bars: list[tuple[BarGroup, Place]]) -> Found:
     """Bars at exact places that stand in each other; found by cells, so that many bars cost little."""
     placed = [(x, y, group, spot) for group, spot in bars for x, y in group.at]
-    cell = max((group.diameter.value for _, _, group, _ in placed), default=1.0)
+    cell = max((group.size for _, _, group, _ in placed), default=1.0)
     cells: dict[tuple[int, int], list[tuple[float, float, float]]] = {}
     for x, y, group, spot in placed:
-        column, row, radius = math.floor(x / cell), math.floor(y / cell), group.diameter.value / 2
+        column, row, radius = math.floor(x / cell), math.floor(y / cell), group.size / 2
         near = (
             other
             for i in (column - 1, column, column + 1)

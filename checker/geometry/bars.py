@@ -130,7 +130,7 @@ class _Placing:
 
     def _largest(self, face: str, layer: int) -> float:
         """Largest diameter of a face's layer, 0 when there is none."""
-        same = (g.diameter.value for g in self.design.bars if (g.face, g.layer) == (face, layer))
+        same = (g.size for g in self.design.bars if (g.face, g.layer) == (face, layer))
         return max(same, default=0.0)
 
     def _depth(self, face: str, layer: int, diameter: float) -> float:
@@ -154,7 +154,7 @@ class _Placing:
         assert edge is not None  # `_missing` has looked
         groups = self.design.bars
         row = _spread(members, [groups[index].count for index in members])
-        diameters = [groups[index].diameter.value for index in row]
+        diameters = [groups[index].size for index in row]
         ux, uy = polygons.direction(points, edge)
         start = self._end(face, layer, edge, 0, diameters[0])
         finish = self._end(face, layer, edge, 1, diameters[-1])
@@ -190,13 +190,13 @@ class _Placing:
         return bar.x, bar.y
 
     def _corners(self, group: BarGroup) -> list[Point]:
-        distance = self._depth("corners", group.layer, group.diameter.value)
+        distance = self._depth("corners", group.layer, group.size)
         points = self.outline.points
         return [polygons.inset_corner(points, i, distance, distance) for i in polygons.convex_corners(points)]
 
     def _round(self, group: BarGroup) -> list[Point]:
         """Spread a group evenly along the inset outline from its lowest point (polygon: its first corner)."""
-        distance = self._depth("round", group.layer, group.diameter.value)
+        distance = self._depth("round", group.layer, group.size)
         if self.outline.circle_diameter is not None:
             r = self.outline.circle_diameter / 2
             angles = (2 * pi * k / group.count - pi / 2 for k in range(group.count))
@@ -207,7 +207,7 @@ class _Placing:
 
 
 def _bar(group: BarGroup, index: int, place: Point) -> Bar:
-    diameter = group.diameter.value
+    diameter = group.size
     area = pi * diameter**2 / 4
     return Bar(place[0], place[1], diameter, area, group.face, group.mark, index, group.layer)
 

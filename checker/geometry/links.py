@@ -28,14 +28,21 @@ def leg_area_by_length(links: LinkSet) -> float:
     return pi * links.diameter.value**2 / 4 / links.spacing.value
 
 
+def counted_leg(design: Design, links: LinkSet) -> float:
+    """Return the area of one leg by length as it counts, mm2/mm: a set of another grade by its share of f_ywk."""
+    grade = 1.0 if links.f_ywk is None else links.f_ywk.value / design.materials.f_ywk.value
+    return leg_area_by_length(links) * grade
+
+
 def A_sw_s_all(design: Design) -> float:
     """Return the area of all legs of all links by length, mm2/mm."""
-    return sum((links.legs * leg_area_by_length(links) for links in web_links(design)), 0.0)
+    return sum((links.legs * counted_leg(design, links) for links in web_links(design)), 0.0)
 
 
 def A_leg_s(design: Design) -> float:
     """Return the area of one leg of the upright perimeter links by length, mm2/mm (for torsion)."""
-    return sum((leg_area_by_length(links) for links in perimeter_links(design) if is_upright(links)), 0.0)
+    upright = (links for links in perimeter_links(design) if is_upright(links))
+    return sum((counted_leg(design, links) for links in upright), 0.0)
 
 
 def n_legs(design: Design) -> int:
@@ -71,20 +78,20 @@ def S_sin(design: Design, eta_leg: float) -> float:
     total = 0.0
     for links in web_links(design):
         outer = 2 if links.where == "perimeter" else 0
-        total += (links.legs - outer + outer * eta_leg) * leg_area_by_length(links) * sin(links.angle)
+        total += (links.legs - outer + outer * eta_leg) * counted_leg(design, links) * sin(links.angle)
     return total
 
 
 def S_cos(design: Design) -> float:
     """Return the sum of leg areas by length times cos(alpha), mm2/mm (6.13); upright links give exactly 0."""
     inclined = (links for links in web_links(design) if abs(links.angle - pi / 2) > SAME_ANGLE)
-    return sum((links.legs * leg_area_by_length(links) * cos(links.angle) for links in inclined), 0.0)
+    return sum((links.legs * counted_leg(design, links) * cos(links.angle) for links in inclined), 0.0)
 
 
 def leg_gap(design: Design, outline: Outline, cage: Cage) -> float:
     """Return the largest horizontal distance between neighbouring legs at mid-height, mm (9.2.2(8)).
 
-    The outer legs stand in the cover, the others evenly between them. In a box each side wall is looked at
+    The outer legs stand in the cover, the others evenly between them, or where `at` says. In a box each side wall is looked at
     by itself, with half of the other legs: from its outer leg to the cover of its inner face.
     """
     inner = n_legs(design) - 2 * len(perimeter_links(design))
@@ -92,6 +99,10 @@ def leg_gap(design: Design, outline: Outline, cage: Cage) -> float:
     if outline.void is not None:
         return max(outline.void[0] - 2 * edge, 0.0) / max(inner // 2, 1)
     left, right = outline.extent_at(outline.height / 2)
+    places = [x for links in web_links(design) for x in links.at]
+    if places and len(places) == inner:
+        line = sorted((left + edge, *places, right - edge))
+        return max(b - a for a, b in pairwise(line))
     return max(right - left - 2 * edge, 0.0) / (inner + 1)
 
 

@@ -11,7 +11,7 @@ from collections.abc import Mapping
 from typing import TYPE_CHECKING, NamedTuple
 
 from checker.declared.flanges import FLANGED
-from checker.geometry import links, steel
+from checker.geometry import details, links, steel
 from checker.geometry.bars import Bar, Cage, cage_of, place_bars
 from checker.geometry.facts import Fact, corners_fact, link_facts
 from checker.geometry.outline import Outline, flanged, outline_of, web_of
@@ -52,6 +52,7 @@ def measure(design: Design) -> Measured:
     inputs = _outline_inputs(acting, web)
     inputs |= _bar_inputs(bars, acting, cage)
     inputs["gap_bars"] = steel.gap_bars(round_web, web, cage)
+    inputs |= details.detail_inputs(design, round_web, web, cage, in_corners)
     inputs["c_axis"] = steel.c_axis(round_web, web, cage, in_corners)
     inputs |= _web_inputs(acting, inputs["a_s_bottom"], inputs["a_s_top"])
     inputs |= _link_inputs(design, web, cage, inputs["a_s_bottom"], inputs["a_s_top"])
@@ -64,6 +65,7 @@ def measure(design: Design) -> Measured:
     )
     facts = link_facts(design)
     facts["corners_filled"] = corners_fact(in_corners, web, design.places.get("bars"))
+    facts |= details.detail_facts(design, round_web, cage, facts["perimeter_link"])
     flange_inputs, flange_facts = _flanges(design, bars)
     inputs |= flange_inputs
     facts |= flange_facts

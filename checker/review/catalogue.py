@@ -50,6 +50,7 @@ class Rule(NamedTuple):
         provided, limit: for `at_most` and `at_least`.
         fact, flag: for `holds`: a fact measured from the geometry, or a flag of the sheet.
         declared: the rule runs only where one of these symbols is declared.
+        needs: inputs that must be stated, else the rule is not checked.
         applies: a flag of the sheet that must hold.
         scope: "member" for what doesn't depend on the case, else "case".
     """
@@ -72,6 +73,7 @@ class Rule(NamedTuple):
     fact: str = ""
     flag: str = ""
     declared: tuple[str, ...] = ()
+    needs: tuple[str, ...] = ()
     applies: str = ""
     scope: str = "case"
 
@@ -79,7 +81,7 @@ class Rule(NamedTuple):
     def symbols(self) -> tuple[str, ...]:
         """Every symbol of the sheet the rule speaks of, `X_declared` included."""
         single = (self.quantity, self.scale, self.limit, self.flag, self.applies)
-        return tuple(s for s in (*single, *self.or_, *self.quantities, *self.provided) if s)
+        return tuple(s for s in (*single, *self.or_, *self.quantities, *self.provided, *self.needs) if s)
 
 
 class Catalogue(NamedTuple):
@@ -97,7 +99,7 @@ class Catalogue(NamedTuple):
 
 
 _KEYS = {name.rstrip("_") for name in Rule._fields} - {"id"}
-_LISTS = ("or", "quantities", "provided", "declared")
+_LISTS = ("or", "quantities", "provided", "declared", "needs")
 
 
 @lru_cache(maxsize=8)

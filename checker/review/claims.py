@@ -10,6 +10,7 @@ import math
 from collections.abc import Mapping
 from typing import Any, NamedTuple
 
+from checker.declared.details_format import UNSAID
 from checker.declared.model import Case, DeclaredValue, Design
 from checker.geometry.measure import Measured
 
@@ -105,6 +106,9 @@ def member_row(design: Design, measured: Measured) -> dict[str, Any]:
         "solid_rectangle": 1.0 if measured.solid_rectangle else 0.0,
         "section": measured.section,
         "unsaid": NAN,
+        "d_g": design.aggregate.value if design.aggregate else NAN,
+        **UNSAID,
+        **design.details,
     }
     heights = [bar.y for bar in measured.bars]
     row["a_s_outer_bottom"] = min(heights)
@@ -134,6 +138,7 @@ def case_row(
         "link_stress_option": 1.0 if link_stress_option(member, claims) else 0.0,
     }
     row |= _web_flange_row(case)
+    row |= case.details
     for symbol, claim in claims.items():
         row[f"{symbol}_declared"] = claim.value
     return row

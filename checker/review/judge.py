@@ -24,6 +24,7 @@ from checker.review.kinds_limits import at_limit, holds
 from checker.review.kinds_strut import implied, same
 from checker.review.kinds_values import agrees, basis, traced
 from checker.review.subject import Outcome, Subject, draft_of, ended, words_of
+from checker.sheet.quantities import Sheet
 
 
 def judge(subject: Subject) -> tuple[list[Check], list[Draft]]:
@@ -46,9 +47,18 @@ def _outcome(rule: Rule, subject: Subject, before: list[Draft]) -> Outcome:
     if rule.applies and not values[rule.applies]:
         quantity = subject.case.sheet.quantities[rule.applies]
         return ended(rule, subject, NOT_APPLICABLE, quantity.note or f"not so: {quantity.name}"), []
+    for name in rule.needs:
+        if values[name] != values[name]:  # nan: the file doesn't say it
+            return ended(rule, subject, NOT_CHECKED, unstated(subject.case.sheet, name)), []
     if rule.kind == "verdict":
         return _verdict(rule, subject, before)
     return _KINDS[rule.kind](rule, subject)
+
+
+def unstated(sheet: Sheet, name: str) -> str:
+    """What is missing, and the key of the file that would say it."""
+    quantity = sheet.quantities[name]
+    return f"{quantity.name} is not stated" + (f" (key {quantity.note})" if quantity.note else "")
 
 
 def _verdict(rule: Rule, subject: Subject, before: list[Draft]) -> Outcome:

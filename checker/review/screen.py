@@ -77,6 +77,8 @@ def suspects(screen: Screen, block: Block) -> Flags:
         held = np.zeros(block.rows, dtype=bool)
         for rule in catalogue.rules.values():
             applies = np.asarray(look.value(rule.applies), dtype=bool) if rule.applies else np.True_
+            for name in rule.needs:
+                applies = applies & np.isfinite(look.value(name))
             if applies.any():
                 held |= applies & (_KINDS[rule.kind](look, rule) if rule.kind in _KINDS else True)
         result: Flags = held | look.parted()

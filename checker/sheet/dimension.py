@@ -17,7 +17,7 @@ OPAQUE: Dimension = (99.0, 99.0)  # a section handed to a solved function; fits 
 UNIT_DIMENSIONS: dict[str, Dimension] = {
     "-": PURE, "deg": PURE, "flag": PURE, "section": OPAQUE,
     "mm": (0.0, 1.0), "mm2": (0.0, 2.0), "mm3": (0.0, 3.0), "mm4": (0.0, 4.0), "mm2/mm": (0.0, 1.0),
-    "kN": (1.0, 0.0), "kNm": (1.0, 1.0), "MPa": (1.0, -2.0),
+    "kN": (1.0, 0.0), "kN/m": (1.0, -1.0), "kNm": (1.0, 1.0), "MPa": (1.0, -2.0),
 }  # fmt: skip
 """What each unit of the sheet measures. Note that mm2/mm and mm can't be told apart by dimension alone."""
 

@@ -19,7 +19,10 @@ from checker.sheet.quantities import Layer, Quantity, Sheet, Source
 from checker.sheet.rulefile import open_rules
 
 SHEET_FOLDER = {"EN 1992-1-1:2004": "en1992-1-1-2004"}
-PARTS = ("materials", "section", "shear", "torsion", "longitudinal", "strut", "reserve")
+PARTS = (
+    "materials", "section", "shear", "torsion", "longitudinal", "strut", "reserve", "details", "anchorage",
+    "supports",
+)  # fmt: skip
 LAYERS_FILE = "shapes.yaml"
 DECLARED = "_declared"
 

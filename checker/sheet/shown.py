@@ -6,7 +6,7 @@ import math
 
 SHOWN_FACTOR: dict[str, float] = {
     "-": 1.0, "flag": 1.0, "mm": 1.0, "mm2": 1.0, "mm3": 1.0, "mm4": 1.0, "mm2/mm": 1.0,
-    "MPa": 1.0, "kN": 1e-3, "kNm": 1e-6, "deg": 180.0 / math.pi, "section": 1.0,
+    "MPa": 1.0, "kN": 1e-3, "kN/m": 1.0, "kNm": 1e-6, "deg": 180.0 / math.pi, "section": 1.0,
 }  # fmt: skip
 """Inside value times this is the value in the shown unit (inside: N, mm, N*mm, MPa, rad)."""
 

@@ -16,7 +16,7 @@ from checker.sheet.program import scalar_namespace
 from checker.sheet.quantities import Quantity, Sheet
 from checker.sheet.shown import number, paper, with_unit
 
-INSIDE_UNIT = {"kN": "N", "kNm": "Nmm"}
+INSIDE_UNIT = {"kN": "N", "kN/m": "N/mm", "kNm": "Nmm"}
 DIGITS = 7
 
 

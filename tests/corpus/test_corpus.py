@@ -24,6 +24,10 @@ BESIDE: dict[str, dict[str, str]] = {
     "links.perimeter": {
         "links.spacing-perimeter": "links that aren't there have no spacing that could be near enough",
         "links.spacing-least-dimension": "links that aren't there have no spacing that could be near enough",
+        "cover.bond-bars": "without a link the bars have nothing but the nominal cover",
+    },
+    "bars.used-twice": {
+        "bars.tension-half": "it says why the tension half falls short",
     },
     "box.side-wall-crushing": {
         "strut.crushing": "the sum over the whole box takes the thinnest wall, so it is never below a side wall's",

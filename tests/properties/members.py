@@ -60,11 +60,18 @@ def draw_member(rng: Random, kind: str) -> Drawn:
     return Drawn(member, section, lines, aggregate)
 
 
-def can_be_built(m: Member) -> bool:
-    """Bars apart from each other, and an equivalent wall that is a tube: no part of the outline thinner than it."""
+def can_be_built(m: Member, aggregate: int) -> bool:
+    """Bars in their cover and apart from each other, and an equivalent wall that is a tube.
+
+    Cover by 4.4.1.2(3) after a deviation of 10 mm, clear distances by 8.2(2), skin bars by their plain presence.
+    """
+    left = m.cover - 10
+    if left < m.phi_w or left + m.phi_w < max(bar.diameter for bar in m.bars):
+        return False
     for i, one in enumerate(m.bars):
         for other in m.bars[:i]:
-            if hypot(one.x - other.x, one.y - other.y) < (one.diameter + other.diameter) / 2 + 1:
+            clear = hypot(one.x - other.x, one.y - other.y) - (one.diameter + other.diameter) / 2
+            if clear < max(one.diameter, other.diameter, aggregate + 5, 20) + 0.01:
                 return False
     if m.shape.kind != "polygon":
         return True

@@ -94,7 +94,7 @@ def sound_design(rng: Random, kind: str, exact: bool, finer: int = 0) -> Sound:
 
 def _attempt(rng: Random, drawn: Drawn, exact: bool, finer: int) -> Sound | None:
     m = drawn.member
-    if sum(bar.area for bar in m.bars) > 0.039 * m.shape.A_c or not can_be_built(m):
+    if sum(bar.area for bar in m.bars) > 0.039 * m.shape.A_c or not can_be_built(m, drawn.aggregate):
         return None
     pure = rng.choice(("", "", "", "", "", "", "", "shear", "torsion"))
     m = replace(m, alpha=rng.choice(INCLINED) if pure == "shear" and rng.random() < 0.5 else pi / 2)
