@@ -193,7 +193,8 @@ def _new(options: argparse.Namespace) -> int:
 
 
 def _rules(options: argparse.Namespace) -> int:
-    from checker.report.catalogue_text import rule_list, rule_text
+    from checker.report.catalogue_text import rule_list
+    from checker.report.rule_text import rule_text
     from checker.review.catalogue import load_catalogue
 
     catalogue = load_catalogue(Path(options.rules) if options.rules else None, options.rules or "")

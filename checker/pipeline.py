@@ -124,8 +124,9 @@ def audit_member(
     outcome = outcome_of((finding.draft.gravity for finding in findings), checks.values())
     revision = design.submission.get("revision", "")
     return MemberResult(
-        design.member, design.file, revision, outcome, findings, tuple(checks.values()), tuple(cases)
-    )
+        design.member, design.file, revision, outcome, findings, tuple(checks.values()), tuple(cases),
+        design, measured,
+    )  # fmt: skip
 
 
 def engine_for(design: Design, measured: Measured, options: Options) -> Engine:

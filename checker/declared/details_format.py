@@ -75,7 +75,9 @@ LAP = Record(
         _mm("c_d", "Least of cover, side cover and half the clear distance (8.4.4).", 1000),
         _STRESS,
         _PRESSURE,
-        Field("share", "number", "Share lapped within 0.65 l_0, such as 50 %; all if left out.", least=0, most=1),
+        Field(
+            "share", "number", "Share lapped within 0.65 l_0, such as 50 %; all if left out.", least=0, most=1
+        ),
         _mm("gap", "Clear distance between the two bars of a lap; touching if left out.", 1000),
         Field("transverse", "number", "Area of all bars across the lap.", unit="mm2", least=0, most=1e6),
     ),

@@ -87,22 +87,16 @@ def _sides(bars: tuple[Bar, ...], outline: Outline) -> dict[str, float]:
     rows = [bar.y for bar in bars if bar.face in ("bottom", "top")]
     low, high = min(rows, default=0.0), max(rows, default=h)
     between = [b for b in bars if low + 1e-6 < b.y < high - 1e-6 and b.face not in ("bottom", "top")]
-    left = sum(_on_side(bar, outline.width, rows) for bar in bars if bar.x < outline.width / 2 - 1e-6)
-    right = sum(_on_side(bar, outline.width, rows) for bar in bars if bar.x > outline.width / 2 + 1e-6)
+    ends = [[bar for bar in bars if bar.y == level] for level in {low, high}]
+    weaker = []
+    for side, outermost in (("left", min), ("right", max)):
+        own = sum(bar.area for bar in bars if bar.face == side)
+        weaker.append(own + sum(outermost(row, key=lambda bar: bar.x).area / 2 for row in ends if row))
     return {
         "A_skin_sagging": sum(bar.area for bar in between if bar.y <= middle + 1e-6),
         "A_skin_hogging": sum(bar.area for bar in between if bar.y >= middle - 1e-6),
-        "A_side_least": min(left, right),
+        "A_side_least": min(weaker),
     }
-
-
-def _on_side(bar: Bar, width: float, rows: list[float]) -> float:
-    """The share of a bar that lies along the nearer side: all of a side bar, half of the last bar of a row."""
-    edge = min(bar.x, width - bar.x)
-    if bar.face in ("left", "right"):
-        return bar.area
-    outermost = edge <= 1.5 * bar.diameter + 80 and bar.layer == 1
-    return bar.area / 2 if outermost and bar.y in (min(rows, default=0), max(rows, default=0)) else 0.0
 
 
 def _bends(design: Design) -> dict[str, float]:
@@ -139,7 +133,9 @@ def _anchored(design: Design) -> Fact:
         marks = ", ".join(group.mark for group in short)
         return Fact(False, f"{marks} are not anchored beyond the section", short[0].place)
     if not said:
-        return Fact(None, "the bars don't say whether they are anchored beyond the section (anchored)", None)
+        return Fact(
+            None, "the bars don't say whether they are anchored beyond the section (key bars: anchored)", None
+        )
     return Fact(True, "every bar that says so is anchored beyond the section", said[0].place)
 
 
@@ -162,7 +158,11 @@ def _lap_leg(design: Design, enclosing: Fact) -> Fact:
             return Fact(False, f"{one.mark} is lapped on a leg at the side", one.place)
     unsaid = [one for one in lapped if one.lap_on is None]
     if unsaid:
-        return Fact(None, f"{unsaid[0].mark} doesn't say which leg its lap lies on (lap_on)", unsaid[0].place)
+        return Fact(
+            None,
+            f"{unsaid[0].mark} doesn't say which leg its lap lies on (key links: lap_on)",
+            unsaid[0].place,
+        )
     return Fact(True, f"{lapped[0].mark} is lapped on the {lapped[0].lap_on} leg", lapped[0].place)
 
 
@@ -177,12 +177,10 @@ def _inner_bends(design: Design, bars: tuple[Bar, ...], cage: Cage) -> Fact:
         for x in one.at:
             for face in ("bottom", "top"):
                 row = [bar for bar in bars if bar.face == face]
-                near = any(
-                    abs(bar.x - x) <= reach + bar.diameter / 2 + 2 * one.diameter.value for bar in row
-                )
+                near = any(abs(bar.x - x) <= reach + bar.diameter / 2 + 2 * one.diameter.value for bar in row)
                 if not near:
                     says = f"no {face} bar in the bend of {one.mark} at {x:g} mm"
                     return Fact(False, says, one.place)
     if len(placed) < len(inner):
-        return Fact(None, "the inner links don't say where their legs stand (at)", inner[0].place)
+        return Fact(None, "the inner links don't say where their legs stand (key links: at)", inner[0].place)
     return Fact(True, "every bend of the inner links holds a bar", placed[0].place)

@@ -91,8 +91,8 @@ def S_cos(design: Design) -> float:
 def leg_gap(design: Design, outline: Outline, cage: Cage) -> float:
     """Return the largest horizontal distance between neighbouring legs at mid-height, mm (9.2.2(8)).
 
-    The outer legs stand in the cover, the others evenly between them, or where `at` says. In a box each side wall is looked at
-    by itself, with half of the other legs: from its outer leg to the cover of its inner face.
+    The outer legs stand in the cover, the others evenly between them, or where `at` says. In a box each side
+    wall is looked at by itself, with half of the other legs: from its outer leg to the cover of its inner face.
     """
     inner = n_legs(design) - 2 * len(perimeter_links(design))
     edge = cage.cover + cage.phi_link / 2

@@ -8,33 +8,12 @@ from collections.abc import Iterable
 
 from checker import shipped
 from checker.review.catalogue import BY_WINDOW, Catalogue, Rule
-from checker.review.drafts import symbol_text
 from checker.review.slips import Slip
 from checker.sheet.quantities import Quantity, Sheet
 from checker.sheet.shown import paper
 from checker.sheet.workings import in_symbols
 
 WIDTH = 100
-
-KIND_WORDS = {
-    "agrees": "the declared value against the recomputed one",
-    "traced": "declared values that come out as if the section had another size",
-    "same": "two declared values are equal",
-    "implied": "the strut angle solved back from declared values against the one claimed",
-    "at_most": "what is provided is at most the limit",
-    "at_least": "what is provided is at least the limit",
-    "holds": "a yes or no measured from the declared section, links and bars",
-    "basis": "what a declared link area says it counts against what the number is",
-    "basis-unsaid": "a declared link area that doesn't say what it counts",
-    "verdict": "the declared verdict against everything else that was found",
-}
-GRAVITY_WORDS = {
-    "unsafe": "unsafe: the member as provided does not hold, or a detail that equilibrium rests on is missing",
-    "breach": "breach: a rule of the standard is broken",
-    "mismatch": "mismatch: a declared number is wrong",
-    "remark": "remark: worth saying, needs no answer",
-    BY_WINDOW: "unsafe where no admissible strut angle is left on which the member holds, else a breach",
-}
 
 
 def rule_list(catalogue: Catalogue) -> str:
@@ -57,38 +36,6 @@ def title_of(rule: Rule) -> str:
     return rule.title or f"declared {paper(rule.quantity)} against the recomputed one"
 
 
-def rule_text(rule: Rule) -> str:
-    """One rule explained: clause, what it compares, tolerance, gravity, why it matters."""
-    compared = {
-        "agrees": [rule.quantity, *rule.or_],
-        "at_most": [*rule.provided, rule.limit],
-        "at_least": [*rule.provided, rule.limit],
-    }.get(rule.kind, [*rule.quantities, rule.fact or rule.flag])
-    rows = [
-        ("rule", rule.id),
-        ("what it looks at", title_of(rule)),
-        ("clause", rule.clause or "that of the quantity; see samestrut sheet " + rule.quantity),
-        ("compares", f"{KIND_WORDS[rule.kind]}: {', '.join(name for name in compared if name)}"),
-        ("tolerance", tolerance_text(rule)),
-        ("gravity", GRAVITY_WORDS[rule.gravity]),
-        ("applies", f"where {rule.applies}" if rule.applies else "always"),
-        ("needs", f"one of these declared: {', '.join(rule.declared)}" if rule.declared else "nothing more"),
-        ("why it matters", rule.why),
-        ("says", rule.says),
-        ("to do", rule.todo),
-    ]
-    return _table(rows)
-
-
-def tolerance_text(rule: Rule) -> str:
-    if rule.kind == "agrees":
-        of = f" (of {symbol_text(rule.scale)} where that is larger)" if rule.scale else ""
-        return f"its own rounding, the rounding it inherits, and {rule.tolerance * 100:g} %{of}"
-    if rule.tolerance:
-        return f"{rule.tolerance * 100:g} % and the rounding of what is declared"
-    return "none"
-
-
 def quantity_list(sheet: Sheet) -> str:
     """Every quantity with a formula, in parts."""
     lines: list[str] = []
@@ -103,7 +50,7 @@ def quantity_list(sheet: Sheet) -> str:
         lines.append(
             f"{quantity.symbol}{unit}: {quantity.name}" + (f" — {quantity.clause}" if quantity.clause else "")
         )
-        lines.append(f"    {_formula(quantity)}")
+        lines.append(f"    {formula_text(quantity)}")
     return "\n".join(lines).lstrip("\n") + "\n"
 
 
@@ -119,7 +66,7 @@ def quantity_text(sheet: Sheet, symbol: str) -> str:
         ("what it is", quantity.name),
         ("unit", quantity.unit),
         ("clause", quantity.clause or "–"),
-        ("formula", _formula(quantity) or "an input: measured, stated in the file, or declared"),
+        ("formula", formula_text(quantity) or "an input: measured, stated in the file, or declared"),
         ("reads", in_symbols(quantity)),
         ("choice", "left to the designer by the standard" if quantity.kind == "choice" else ""),
         (
@@ -134,7 +81,7 @@ def quantity_text(sheet: Sheet, symbol: str) -> str:
         ("stands in", f"{quantity.source.file}:{quantity.source.line}"),
         ("layers on", ", ".join(sheet.layers)),
     ]
-    return _table(rows)
+    return table_text(rows)
 
 
 def slip_list(slips: Iterable[Slip]) -> str:
@@ -153,7 +100,7 @@ def slip_text(slip: Slip) -> str:
         ("weight", f"{slip.weight:g} (orders slips that fit equally)"),
     ]
     rows += [("wrong formula", f"{symbol} = {formula.text}") for symbol, formula in slip.replaces.items()]
-    return _table(rows)
+    return table_text(rows)
 
 
 def basis_text(basis: str) -> str:
@@ -167,11 +114,11 @@ def basis_text(basis: str) -> str:
     return "; ".join([words, *named])
 
 
-def _formula(quantity: Quantity) -> str:
+def formula_text(quantity: Quantity) -> str:
     return "" if quantity.formula is None else f"{quantity.symbol} = {quantity.formula.text}"
 
 
-def _table(rows: list[tuple[str, str]]) -> str:
+def table_text(rows: list[tuple[str, str]]) -> str:
     width = max(len(name) for name, text in rows if text) + 2
     lines = [
         textwrap.fill(

@@ -10,6 +10,7 @@ import json
 import math
 from typing import TYPE_CHECKING, Any
 
+from checker.geometry.counted import bars_counted, links_counted
 from checker.review.drafts import Check, Draft
 from checker.review.findings import CaseResult, Finding, MemberResult
 from checker.review.window import Span, common_span, degrees_of
@@ -54,6 +55,23 @@ def _member(member: MemberResult) -> dict[str, Any]:
         "checks": [_check(check) for check in member.checks],
         "cases": [_case(case) for case in member.cases],
         "window": _span(common_span(case.window for case in member.cases)),
+        "steel": _steel(member),
+    }
+
+
+def _steel(member: MemberResult) -> dict[str, Any] | None:
+    """What each group of bars and each set of links counts for (mm, mm2, mm2/mm)."""
+    if member.design is None or member.measured is None:
+        return None
+    return {
+        "bars": [
+            {**bars._asdict(), **{key: _rounded(getattr(bars, key)) for key in ("area", "bottom", "top")}}
+            for bars in bars_counted(member.design, member.measured)
+        ],
+        "links": [
+            {**links._asdict(), "shear": _rounded(links.shear), "torsion": _rounded(links.torsion)}
+            for links in links_counted(member.design)
+        ],
     }
 
 

@@ -125,6 +125,35 @@ class CaseModel(_Model):
     reserve: ReservesModel
 
 
+class BarsModel(_Model):
+    """A group of bars: areas in mm2 that the bottom and the top half have of it, sizes in mm."""
+
+    mark: str
+    number: int
+    diameter: float
+    area: float
+    bottom: float
+    top: float
+    chord: Literal["bottom", "top", "both", ""]
+
+
+class LinksModel(_Model):
+    """A set of links: area of all legs for shear and of one for torsion, mm2/mm; sizes in mm."""
+
+    mark: str
+    legs: int
+    diameter: float
+    spacing: float
+    shear: float
+    torsion: float
+    why_not: str
+
+
+class SteelModel(_Model):
+    bars: list[BarsModel]
+    links: list[LinksModel]
+
+
 class MemberModel(_Model):
     member: str
     file: str
@@ -134,6 +163,7 @@ class MemberModel(_Model):
     checks: list[CheckModel]
     cases: list[CaseModel]
     window: Span | None = Field(description="strut angles that hold in every case")
+    steel: SteelModel | None = Field(description="what each group of bars and set of links counts for")
 
 
 class FaultModel(_Model):

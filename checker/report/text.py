@@ -7,9 +7,11 @@
 from __future__ import annotations
 
 import math
+import re
 import textwrap
 from typing import TYPE_CHECKING
 
+from checker.report.steel_text import steel_text
 from checker.review.drafts import CRASHED, FAIL, NOT_APPLICABLE, NOT_CHECKED, PASS
 from checker.review.findings import CaseResult, Finding, MemberResult
 from checker.review.window import AS_CLAIMED, Span, common_span, degrees_of
@@ -70,6 +72,8 @@ def _member(member: MemberResult, *, workings: bool) -> str:
     if member.findings:
         blocks.append(_overview(member))
     blocks += [_finding(finding, member.file, workings=workings) for finding in member.findings]
+    if workings:
+        blocks.append(steel_text(member))
     blocks.append(_checks(member))
     return "\n\n".join(blocks)
 
@@ -210,9 +214,13 @@ def _checks(member: MemberResult) -> str:
         if check.status in (NOT_CHECKED, CRASHED):
             reasons.setdefault(check.why, []).append(check.rule)
     undeclared = [rule for why, rules in reasons.items() if why.endswith("is not declared") for rule in rules]
+    keys = {why: found[1] for why in reasons if (found := re.search(r"\(key (.+)\)$", why))}
     for why, rules in reasons.items():
-        if not why.endswith("is not declared"):
+        if not why.endswith("is not declared") and why not in keys:
             lines.append(_wrapped(f"Not checked: {', '.join(dict.fromkeys(rules))} — {why}."))
+    if keys:
+        named = [f"{rule} ({key})" for why, key in keys.items() for rule in dict.fromkeys(reasons[why])]
+        lines.append(_wrapped(f"Not checked, for want of the key in brackets: {', '.join(named)}."))
     if undeclared:
         names = ", ".join(dict.fromkeys(rule.removeprefix("agrees.") for rule in undeclared))
         lines.append(_wrapped(f"Not checked, because nothing is declared for it: {names}."))

@@ -11,11 +11,15 @@ from __future__ import annotations
 import hashlib
 import math
 from collections.abc import Iterable, Mapping
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 from checker.review.catalogue import GRAVITIES
 from checker.review.drafts import CRASHED, Check, Draft
 from checker.review.window import Reserve, Window
+
+if TYPE_CHECKING:
+    from checker.declared.model import Design
+    from checker.geometry.measure import Measured
 
 ACCEPT, WITH_REMARKS, RETURN, INCOMPLETE = "accept", "accept with remarks", "return", "incomplete"
 EXIT_CODES = {ACCEPT: 0, WITH_REMARKS: 0, RETURN: 1, INCOMPLETE: 3}
@@ -42,7 +46,7 @@ class CaseResult(NamedTuple):
 
 
 class MemberResult(NamedTuple):
-    """One member of a report."""
+    """One member of a report; with what was read and measured, for those who show it."""
 
     member: str
     file: str
@@ -51,6 +55,8 @@ class MemberResult(NamedTuple):
     findings: tuple[Finding, ...]
     checks: tuple[Check, ...]
     cases: tuple[CaseResult, ...]
+    design: Design | None = None
+    measured: Measured | None = None
 
 
 def identity(member: str, draft: Draft) -> str:

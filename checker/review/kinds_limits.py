@@ -111,8 +111,17 @@ def _traced_back(rule: Rule, subject: Subject) -> dict[str, object]:
 
 def _place_of(subject: Subject, rule: Rule) -> Place | None:
     """Where the thing a rule is about stands: its links, its bars, or the case."""
-    for word, key in (("links", "links"), ("bars", "bars"), ("factors", "materials"), ("torsion", "torsion"),
-        ("cover", "cover"), ("anchorage", "anchorage"), ("laps", "lap"), ("support", "support"), ("bundles", "bars")):
+    for word, key in (
+        ("links", "links"),
+        ("bars", "bars"),
+        ("factors", "materials"),
+        ("torsion", "torsion"),
+        ("cover", "cover"),
+        ("anchorage", "anchorage"),
+        ("laps", "lap"),
+        ("support", "support"),
+        ("bundles", "bars"),
+    ):
         if rule.id.startswith(word) and key in subject.places:
             return subject.places[key]
     return subject.case.case.place

@@ -23,6 +23,7 @@ INSIDE = {
     "area": "mm**2",
     "area/length": "mm**2/mm",
     "force": "N",
+    "force/length": "N/mm",
     "moment": "N*mm",
     "stress": "MPa",
     "angle": "rad",
