@@ -15,10 +15,15 @@ import re
 import sys
 from collections.abc import Sequence
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from checker import __version__
 from checker.errors import InputFaults, SamestrutError, UsageError
 
+if TYPE_CHECKING:
+    from checker.report.audit_report import AuditReport
+
+_KINDS = (".json", ".txt", ".html")
 SCHEMAS = ("design", "report", "rules", "sheet")
 _COLOURS = {"unsafe": "1;31", "breach": "31", "mismatch": "33", "remark": "36"}
 
@@ -70,7 +75,7 @@ def _parser() -> argparse.ArgumentParser:
         action="append",
         default=[],
         metavar="FILE",
-        help="also write the report to FILE; its ending says the kind (.json, .txt); may be repeated",
+        help="also write the report to FILE; its ending says the kind (.json, .txt, .html); may be repeated",
     )
     audit.add_argument(
         "--annex", metavar="NAME|FILE", help="national annex instead of the one each file names"
@@ -123,9 +128,9 @@ def _audit(options: argparse.Namespace) -> int:
 
     kinds = {path: Path(path).suffix.lower() for path in options.output}
     for path, kind in kinds.items():
-        if kind not in (".json", ".txt"):
+        if kind not in _KINDS:
             raise UsageError(
-                f"{path}: don't know how to write {kind or 'a file without an ending'}; known are .json, .txt"
+                f"{path}: don't know how to write {kind or 'a file without an ending'}; known are {', '.join(_KINDS)}"
             )
         if any(_same_file(path, given) for given in options.paths):
             raise UsageError(f"{path}: is one of the files to audit; write the report elsewhere")
@@ -133,13 +138,22 @@ def _audit(options: argparse.Namespace) -> int:
     for fault in report.faults:
         print(fault, file=sys.stderr)
     for path, kind in kinds.items():
-        text = report.to_json() if kind == ".json" else report.text(workings=options.workings)
-        write_whole(Path(path), text)
+        write_whole(Path(path), _written(report, kind, workings=options.workings))
     if not options.quiet and options.format == "json":
         sys.stdout.write(report.to_json())
     elif not options.quiet and report.members:
         sys.stdout.write(_coloured(report.text(workings=options.workings)))
     return report.exit_code
+
+
+def _written(report: AuditReport, kind: str, *, workings: bool) -> str:
+    if kind == ".json":
+        return report.to_json()
+    if kind == ".html":
+        from checker.page.page import html_of
+
+        return html_of(report)
+    return report.text(workings=workings)
 
 
 def _same_file(output: str, given: str) -> bool:

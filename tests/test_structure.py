@@ -16,6 +16,7 @@ ORDER = [
     "sheet",
     "review",
     "report",
+    "page",
     "pipeline",
     "cli",
     "__main__",

@@ -28,7 +28,8 @@ def detail_inputs(
     """Return every measured quantity that only detailing rules ask for."""
     clear, by_size, size = _clear_distances(bars)
     filled = [max(bar.diameter for bar in found) for found in in_corners.values() if found]
-    upright = [links for links in design.links if links.where == "inner" and not is_upright(links)]
+    enclosing_upright = any(is_upright(links) for links in perimeter_links(design))
+    leaning = [links for links in design.links if links.where == "inner" and not is_upright(links)]
     return {
         "clear_least": clear,
         "clear_by_size": by_size,
@@ -40,7 +41,7 @@ def detail_inputs(
         "phi_link_all": max((links.diameter.value for links in design.links), default=0.0),
         "phi_least_bottom": _least_on(bars, "bottom"),
         "phi_least_top": _least_on(bars, "top"),
-        "n_aslant_inner": float(len(upright)),
+        "n_aslant_inner": float(len(leaning)) if enclosing_upright else 0.0,
         "A_enclosing_s": sum(
             links.legs * leg_area_by_length(links) * sin(links.angle) for links in perimeter_links(design)
         ),

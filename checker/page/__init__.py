@@ -1,0 +1,1 @@
+"""The page: one self-contained HTML file with its drawings, from a finished report."""
