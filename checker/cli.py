@@ -15,15 +15,10 @@ import re
 import sys
 from collections.abc import Sequence
 from pathlib import Path
-from typing import TYPE_CHECKING
 
 from checker import __version__
 from checker.errors import InputFaults, SamestrutError, UsageError
 
-if TYPE_CHECKING:
-    from checker.report.audit_report import AuditReport
-
-_KINDS = (".json", ".txt", ".html")
 SCHEMAS = ("design", "report", "rules", "sheet")
 _COLOURS = {"unsafe": "1;31", "breach": "31", "mismatch": "33", "remark": "36"}
 
@@ -75,7 +70,8 @@ def _parser() -> argparse.ArgumentParser:
         action="append",
         default=[],
         metavar="FILE",
-        help="also write the report to FILE; its ending says the kind (.json, .txt, .html); may be repeated",
+        help="also write the report to FILE; its ending says the kind: .json, .txt, .html, .pdf, .md, .csv or .xlsx "
+        "(comment sheet), .parquet or a .csv with “results” in its name (every quantity); may be repeated",
     )
     audit.add_argument(
         "--annex", metavar="NAME|FILE", help="national annex instead of the one each file names"
@@ -124,36 +120,25 @@ def _parser() -> argparse.ArgumentParser:
 
 
 def _audit(options: argparse.Namespace) -> int:
+    from checker.outputs.writers import writer_of
     from checker.pipeline import audit
+    from checker.progress import progress_on_terminal
 
-    kinds = {path: Path(path).suffix.lower() for path in options.output}
-    for path, kind in kinds.items():
-        if kind not in _KINDS:
-            raise UsageError(
-                f"{path}: don't know how to write {kind or 'a file without an ending'}; known are {', '.join(_KINDS)}"
-            )
+    writers = {path: writer_of(path) for path in options.output}
+    for path in writers:
         if any(_same_file(path, given) for given in options.paths):
             raise UsageError(f"{path}: is one of the files to audit; write the report elsewhere")
-    report = audit(options.paths, annex=options.annex, rules=options.rules)
+    progress = progress_on_terminal(quiet=options.quiet)
+    report = audit(options.paths, annex=options.annex, rules=options.rules, progress=progress)
     for fault in report.faults:
         print(fault, file=sys.stderr)
-    for path, kind in kinds.items():
-        write_whole(Path(path), _written(report, kind, workings=options.workings))
+    for path, writer in writers.items():
+        write_whole(Path(path), writer(report, options.workings))
     if not options.quiet and options.format == "json":
         sys.stdout.write(report.to_json())
     elif not options.quiet and report.members:
         sys.stdout.write(_coloured(report.text(workings=options.workings)))
     return report.exit_code
-
-
-def _written(report: AuditReport, kind: str, *, workings: bool) -> str:
-    if kind == ".json":
-        return report.to_json()
-    if kind == ".html":
-        from checker.page.page import html_of
-
-        return html_of(report)
-    return report.text(workings=workings)
 
 
 def _same_file(output: str, given: str) -> bool:
@@ -162,7 +147,7 @@ def _same_file(output: str, given: str) -> bool:
     return target == source or (target.exists() and source.is_dir() and source in target.parents)
 
 
-def write_whole(path: Path, text: str) -> None:
+def write_whole(path: Path, content: str | bytes) -> None:
     """Write a file whole or not at all: to a temporary file beside it, then renamed.
 
     Raises:
@@ -173,8 +158,8 @@ def write_whole(path: Path, text: str) -> None:
     try:
         handle, temporary = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.", suffix=".part")
         try:
-            with os.fdopen(handle, "w", encoding="utf-8", newline="\n") as stream:
-                stream.write(text)
+            with os.fdopen(handle, "wb") as stream:
+                stream.write(content.encode("utf-8") if isinstance(content, str) else content)
                 stream.flush()
                 os.fsync(stream.fileno())
             mask = os.umask(0)

@@ -18,6 +18,7 @@ from checker.declared.build import load_file
 from checker.declared.model import NOWHERE, Design
 from checker.errors import Fault, InputFaults, UsageError
 from checker.geometry.measure import Measured, measure
+from checker.progress import Progress
 from checker.report.audit_report import AuditReport, Input, Stamp
 from checker.review.catalogue import Catalogue, load_catalogue
 from checker.review.claims import case_row, claims_of, member_row
@@ -63,7 +64,11 @@ def _named(path: Path) -> str:
 
 
 def audit(
-    items: Item | Iterable[Item], *, annex: str | None = None, rules: str | Path | None = None
+    items: Item | Iterable[Item],
+    *,
+    annex: str | None = None,
+    rules: str | Path | None = None,
+    progress: Progress | None = None,
 ) -> AuditReport:
     """Audit declared designs and give one report over all of them.
 
@@ -71,6 +76,7 @@ def audit(
         items: files, folders, or designs already loaded.
         annex: national layer to use instead of the one each file names (a name or a layer file).
         rules: a file of rules and layers of an office.
+        progress: called before each file and at the end.
 
     Raises:
         RuleFaults: the annex or the rule file can't be used.
@@ -85,7 +91,10 @@ def audit(
     inputs: list[Input] = []
     faults: list[Fault] = []
     annexes: dict[str, None] = {}
-    for item in _expanded([items] if isinstance(items, str | Path | Design) else items, faults):
+    every = list(_expanded([items] if isinstance(items, str | Path | Design) else items, faults))
+    for done, item in enumerate(every):
+        if progress is not None:
+            progress(done, len(every), item.member if isinstance(item, Design) else Path(item).name)
         try:
             design = item if isinstance(item, Design) else load(item)
             used = _annex_of(design, options)
@@ -96,6 +105,8 @@ def audit(
             continue
         annexes[used] = None
         inputs.append(Input(design.file, design.sha256))
+    if progress is not None:
+        progress(len(every), len(every), "")
     outcome = worst([*(member.outcome for member in members), *([INCOMPLETE] if faults else [])])
     return AuditReport(_stamp(annexes, options), tuple(inputs), outcome, tuple(members), tuple(faults))
 

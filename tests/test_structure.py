@@ -17,6 +17,8 @@ ORDER = [
     "review",
     "report",
     "page",
+    "outputs",
+    "progress",
     "pipeline",
     "cli",
     "__main__",

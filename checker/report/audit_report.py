@@ -98,13 +98,21 @@ class AuditReport:
         return pd.DataFrame(rows)
 
     def quantities_frame(self) -> pd.DataFrame:
-        """One row a recomputed quantity: member, case, symbol, value, unit."""
+        """One row a recomputed quantity: member, case, symbol, value, unit, what was declared for it, and the ratio."""
         import pandas as pd
 
-        rows = [
-            {"member": member["member"], "case": case["case"], "symbol": symbol, **quantity}
-            for member in self.document()["members"]
-            for case in member["cases"]
-            for symbol, quantity in case["quantities"].items()
-        ]
-        return pd.DataFrame(rows, columns=["member", "case", "symbol", "value", "unit"])
+        from checker.report.document import quantity_rows
+
+        columns = ["member", "case", "symbol", "value", "unit", "declared", "ratio"]
+        return pd.DataFrame(quantity_rows(self), columns=columns)
+
+    def _repr_html_(self) -> str:
+        """How the report shows itself in a notebook: outcome and counts, and a row a finding."""
+        from html import escape
+
+        rows = "".join(
+            f"<tr><td>{f.number}</td><td>{f.draft.gravity}</td><td>{escape(f.draft.says)}</td></tr>"
+            for f in self.findings
+        )
+        head = "<tr><th>No.</th><th>gravity</th><th>finding</th></tr>"
+        return f"<p><b>{escape(self.outcome)}</b></p><table>{head}{rows}</table>"

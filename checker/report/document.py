@@ -75,6 +75,22 @@ def _steel(member: MemberResult) -> dict[str, Any] | None:
     }
 
 
+def quantity_rows(report: AuditReport) -> list[tuple[Any, ...]]:
+    """Member, case, symbol, value, unit, declared, declared over recomputed: a row a quantity, in shown units."""
+    rows: list[tuple[Any, ...]] = []
+    for member in report.members:
+        claims = {case.name: case.declared for case in member.design.cases} if member.design else {}
+        for case in member.cases:
+            for symbol, value in case.values.items():
+                unit = case.units[symbol]
+                claim = claims.get(case.case, {}).get(symbol)
+                declared = None if claim is None else claim.number.value
+                ratio = None if declared is None or not value else _rounded(declared / value)
+                shown = _shown(declared, unit)
+                rows.append((member.member, case.case, symbol, _shown(value, unit), unit, shown, ratio))
+    return rows
+
+
 def _finding(finding: Finding, file: str) -> dict[str, Any]:
     draft = finding.draft
     return {

@@ -95,7 +95,7 @@ def read(tree: Tree) -> Design | None:
         return None
 
 
-@settings(max_examples=250, deadline=None, derandomize=True, suppress_health_check=list(HealthCheck))
+@settings(max_examples=120, deadline=None, derandomize=True, suppress_health_check=list(HealthCheck))
 @given(changed())
 def test_no_check_crashes(tree):
     design = read(tree)

@@ -20,7 +20,7 @@ from checker.review.drafts import Draft
 from tests.properties.members import SHAPES
 from tests.properties.sound import UNIT, Sound, sound_design
 
-DESIGNS = 5
+DESIGNS = 3
 """Of each shape; all their declared values are changed."""
 
 ANGLES = {s for s in DECLARABLE if "theta" in s}

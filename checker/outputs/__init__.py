@@ -1,0 +1,1 @@
+"""Files a report is written to: which ending makes which, and the makers of each."""
