@@ -14,8 +14,9 @@ from typing import NamedTuple
 from checker import shipped
 from checker.declared.tree import Entry, Mapping, Node, Scalar, Sequence
 from checker.errors import Fault, RuleFaults
+from checker.sheet import store
 from checker.sheet.quantities import Sheet
-from checker.sheet.rulefile import open_rules
+from checker.sheet.rulefile import open_rules, rules_digest
 
 KINDS = (
     "agrees",
@@ -111,8 +112,15 @@ def load_catalogue(extra: Path | None = None, shown_as: str = "") -> Catalogue:
     """
     rules: dict[str, Rule] = {}
     faults: list[Fault] = []
-    for path in sorted((shipped.folder("rules") / "checks").glob("*.yaml")):
-        _read_rules(path, shipped.shown(path), rules, faults)
+    key = store.key_of(rules_digest(), "catalogue", *Rule._fields)
+    kept = store.recall(key)
+    if kept is not None:
+        rules = {fields[0]: Rule(*fields) for fields in kept}
+    else:
+        for path in sorted((shipped.folder("rules") / "checks").glob("*.yaml")):
+            _read_rules(path, shipped.shown(path), rules, faults)
+        if not faults:
+            store.keep(key, [tuple(rule) for rule in rules.values()])
     if extra is not None:
         _read_rules(extra, shown_as or extra.name, rules, faults)
     if faults:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import hashlib
+from functools import lru_cache
 from pathlib import Path
 
 from checker import shipped
@@ -30,11 +31,24 @@ def open_rules(path: Path, shown_as: str) -> Mapping:
 
 def rules_digest(extra: tuple[Path, ...] = ()) -> str:
     """SHA-256 over every shipped rule file, in order, and the extra ones; it names the rule set in a report."""
-    base = shipped.folder("rules")
-    digest = hashlib.sha256()
-    for path in [*sorted(base.rglob("*.yaml")), *extra]:
-        name = path.relative_to(base).as_posix() if path.is_relative_to(base) else f"extra/{path.name}"
-        content = path.read_bytes().replace(b"\r\n", b"\n")
-        digest.update(f"{name}\n{len(content)}\n".encode())
-        digest.update(content)
+    digest = _shipped_rules().copy()
+    for path in extra:
+        _add(digest, path)
     return digest.hexdigest()
+
+
+@lru_cache(maxsize=1)
+def _shipped_rules() -> hashlib._Hash:
+    """The shipped files, read once in a process: they don't change while it runs."""
+    digest = hashlib.sha256()
+    for path in sorted(shipped.folder("rules").rglob("*.yaml")):
+        _add(digest, path)
+    return digest
+
+
+def _add(digest: hashlib._Hash, path: Path) -> None:
+    base = shipped.folder("rules")
+    name = path.relative_to(base).as_posix() if path.is_relative_to(base) else f"extra/{path.name}"
+    content = path.read_bytes().replace(b"\r\n", b"\n")
+    digest.update(f"{name}\n{len(content)}\n".encode())
+    digest.update(content)

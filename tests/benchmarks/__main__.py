@@ -22,7 +22,7 @@ ROWS = 10_000
 
 
 def main() -> None:
-    rows = [one_file(), *columns()]
+    rows = [one_file(), *columns(), page()]
     heads = ["what", "ours, ms", "yardstick, ms", "ratio", "at most"]
     shown = [[*row[:1], f"{row[1]:.1f}", f"{row[2]:.1f}", f"{row[3]:.2f}", f"{row[4]:.1f}"] for row in rows]
     print(tabulate(shown, heads, tablefmt="plain", disable_numparse=True))
@@ -63,6 +63,31 @@ def hundred_lines() -> str:
 
 def _run(command: list[str], environment: dict[str, str]) -> None:
     subprocess.run(command, cwd=ROOT, env=environment, stdout=subprocess.DEVNULL, check=False)
+
+
+def page() -> tuple[str, float, float, float, float]:
+    """The page of a hundred members with a thousand findings, beside the same page without its drawings."""
+    from unittest.mock import patch
+
+    from checker import audit, load
+    from checker.page.page import html_of
+
+    design = load(ROOT / "examples/market-hall/edge-beam-mistakes.yaml")
+    report = audit([design._replace(member=f"EB-{number:03}") for number in range(100)])
+    assert len(report.findings) >= 1000
+    size = len(html_of(report).encode())
+    assert size < 6_000_000, size
+
+    def bare() -> str:
+        with patch("checker.page.member._drawings", lambda member, index: ""):
+            return html_of(report)
+
+    times = alternate(lambda: html_of(report), bare, 5)
+    return (
+        f"page of {len(report.findings)} findings, {size / 1e6:.1f} MB / the same without drawings",
+        *times,
+        2.5,
+    )
 
 
 def columns() -> list[tuple[str, float, float, float, float]]:
