@@ -156,7 +156,7 @@ def perimeter_drawing(member: MemberResult, name: str) -> str:
         told.append(f"{part}, case {case.case}: needed {number(need)} mm², provided {number(have)} mm²")
         y += 10
     title = f"Longitudinal steel of {member.member}"
-    return svg.picture(name, LEFT + 340, max(y, 20), title, "; ".join(told) + ".", body)
+    return svg.picture(name, LEFT + 390, max(y, 20), title, "; ".join(told) + ".", body)
 
 
 def _needed_and_provided(need: float, have: float, most: float, y: float) -> list[str]:
