@@ -17,6 +17,7 @@ from collections.abc import Sequence
 from pathlib import Path
 
 from checker import __version__
+from checker.cli_log import add_log
 from checker.errors import InputFaults, SamestrutError, UsageError
 
 SCHEMAS = ("design", "report", "rules", "sheet")
@@ -112,6 +113,8 @@ def _parser() -> argparse.ArgumentParser:
     slips.add_argument("id", nargs="?", metavar="ID")
     slips.add_argument("--rules", metavar="FILE", help="an office's own slips, laid over the shipped ones")
     slips.set_defaults(run=_slips)
+
+    add_log(commands)
 
     schema = commands.add_parser("schema", help="print the JSON Schema of a file this tool reads or writes")
     schema.add_argument("name", choices=SCHEMAS, metavar="NAME", help=", ".join(SCHEMAS))

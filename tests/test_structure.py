@@ -20,6 +20,8 @@ ORDER = [
     "outputs",
     "progress",
     "pipeline",
+    "log",
+    "cli_log",
     "cli",
     "__main__",
 ]
