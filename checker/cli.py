@@ -81,6 +81,16 @@ def _parser() -> argparse.ArgumentParser:
         "--rules", metavar="FILE", help="an office's own rules and limits, laid over the shipped ones"
     )
     audit.add_argument(
+        "--previous", metavar="REPORT.json", help="an earlier report: its numbers are kept, changes are told"
+    )
+    audit.add_argument(
+        "--renamed",
+        action="append",
+        default=[],
+        metavar="OLD=NEW",
+        help="a member that had another name in it",
+    )
+    audit.add_argument(
         "--format", choices=("text", "json"), default="text", help="what goes to standard output"
     )
     audit.add_argument(
@@ -132,7 +142,10 @@ def _audit(options: argparse.Namespace) -> int:
         if any(_same_file(path, given) for given in options.paths):
             raise UsageError(f"{path}: is one of the files to audit; write the report elsewhere")
     progress = progress_on_terminal(quiet=options.quiet)
-    report = audit(options.paths, annex=options.annex, rules=options.rules, progress=progress)
+    report = audit(
+        options.paths, annex=options.annex, rules=options.rules, progress=progress, previous=options.previous,
+        renamed=_renamed(options.renamed),
+    )  # fmt: skip
     for fault in report.faults:
         print(fault, file=sys.stderr)
     for path, writer in writers.items():
@@ -142,6 +155,17 @@ def _audit(options: argparse.Namespace) -> int:
     elif not options.quiet and report.members:
         sys.stdout.write(_coloured(report.text(workings=options.workings)))
     return report.exit_code
+
+
+def _renamed(pairs: list[str]) -> dict[str, str]:
+    """`OLD=NEW` as given on the command line."""
+    found = {}
+    for pair in pairs:
+        old, sign, new = pair.partition("=")
+        if not (old and sign and new):
+            raise UsageError(f"--renamed {pair}: expected OLD=NEW")
+        found[old] = new
+    return found
 
 
 def _same_file(output: str, given: str) -> bool:

@@ -7,7 +7,7 @@
 from __future__ import annotations
 
 import os
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Mapping
 from contextlib import suppress
 from functools import cache, partial
 from pathlib import Path
@@ -69,6 +69,8 @@ def audit(
     annex: str | None = None,
     rules: str | Path | None = None,
     progress: Progress | None = None,
+    previous: str | Path | None = None,
+    renamed: Mapping[str, str] | None = None,
 ) -> AuditReport:
     """Audit declared designs and give one report over all of them.
 
@@ -77,6 +79,8 @@ def audit(
         annex: national layer to use instead of the one each file names (a name or a layer file).
         rules: a file of rules and layers of an office.
         progress: called before each file and at the end.
+        previous: an earlier report (JSON) whose numbers are kept.
+        renamed: old name of a member in it -> its name now.
 
     Raises:
         RuleFaults: the annex or the rule file can't be used.
@@ -108,7 +112,19 @@ def audit(
     if progress is not None:
         progress(len(every), len(every), "")
     outcome = worst([*(member.outcome for member in members), *([INCOMPLETE] if faults else [])])
-    return AuditReport(_stamp(annexes, options), tuple(inputs), outcome, tuple(members), tuple(faults))
+    stamp = _stamp(annexes, options)
+    if previous is None:
+        return AuditReport(stamp, tuple(inputs), outcome, tuple(members), tuple(faults))
+    from checker.trail import continued, read_previous
+
+    said = {
+        "standard": stamp.standard,
+        "annex": stamp.annex,
+        "digest": stamp.digest,
+        "version": stamp.version,
+    }
+    kept, trail = continued(members, read_previous(Path(previous)), renamed or {}, said)
+    return AuditReport(stamp, tuple(inputs), outcome, kept, tuple(faults), trail)
 
 
 def audit_member(

@@ -15,6 +15,7 @@ ORDER = [
     "geometry",
     "sheet",
     "review",
+    "trail",
     "report",
     "page",
     "outputs",

@@ -14,6 +14,8 @@ from checker.review.findings import EXIT_CODES, Finding, MemberResult
 if TYPE_CHECKING:
     import pandas as pd
 
+    from checker.trail import Trail
+
 
 class Input(NamedTuple):
     """A file that was audited, with the SHA-256 of its bytes."""
@@ -42,6 +44,7 @@ class AuditReport:
         outcome: "accept", "accept with remarks", "return" or "incomplete".
         members: a result a member.
         faults: what made files unreadable; those files have no member here.
+        trail: what became of the findings of an earlier report, where one was given.
     """
 
     stamp: Stamp
@@ -49,6 +52,7 @@ class AuditReport:
     outcome: str
     members: tuple[MemberResult, ...]
     faults: tuple[Fault, ...] = ()
+    trail: Trail | None = None
 
     @property
     def findings(self) -> tuple[Finding, ...]:

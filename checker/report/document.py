@@ -26,7 +26,7 @@ DIGITS = 9  # significant digits written: more is noise, fewer would hide a roun
 def document_of(report: AuditReport) -> dict[str, Any]:
     """The whole report as dictionaries and lists."""
     stamp = report.stamp
-    return {
+    document = {
         "format": FORMAT,
         "tool": {"name": stamp.tool, "version": stamp.version},
         "rules": {"standard": stamp.standard, "annex": stamp.annex, "digest": stamp.digest},
@@ -39,6 +39,10 @@ def document_of(report: AuditReport) -> dict[str, Any]:
             for fault in report.faults
         ],
     }
+    if report.trail is not None:
+        steps = [step._asdict() for step in report.trail.steps]
+        document["trail"] = {**report.trail._asdict(), "steps": steps, "differs": list(report.trail.differs)}
+    return document
 
 
 def json_text(report: AuditReport) -> str:

@@ -173,6 +173,30 @@ class FaultModel(_Model):
     says: str
 
 
+class StepModel(_Model):
+    """What became of one finding of an earlier report, or a new one; values in the shown unit."""
+
+    number: Line
+    id: str
+    member: str
+    rule: str
+    state: Literal[
+        "new", "still open", "changed for the better", "changed for the worse", "settled", "lost from sight"
+    ]
+    was: float | None
+    now: float | None
+    unit: str
+
+
+class TrailModel(_Model):
+    """What became of the findings since an earlier report; `highest` is the highest number ever given."""
+
+    since: str
+    highest: int
+    steps: list[StepModel]
+    differs: list[str]
+
+
 class ReportModel(_Model):
     """The report of one run of `samestrut audit`."""
 
@@ -184,6 +208,7 @@ class ReportModel(_Model):
     counts: Counts
     members: list[MemberModel]
     faults: list[FaultModel] = Field(description="what kept files from being audited")
+    trail: TrailModel | None = Field(default=None, description="only where an earlier report was given")
 
 
 def report_schema() -> dict[str, Any]:

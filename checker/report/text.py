@@ -12,6 +12,7 @@ import textwrap
 from typing import TYPE_CHECKING
 
 from checker.report.steel_text import steel_text
+from checker.report.trail_text import trail_text
 from checker.review.drafts import CRASHED, FAIL, NOT_APPLICABLE, NOT_CHECKED, PASS
 from checker.review.findings import CaseResult, Finding, MemberResult
 from checker.review.window import AS_CLAIMED, Span, common_span, degrees_of
@@ -39,7 +40,7 @@ OUTCOME_WORDS = {
 
 def text_of(report: AuditReport, *, workings: bool = False) -> str:
     """The whole report; `workings` adds the right working under each finding."""
-    parts = [_head(report)]
+    parts = [_head(report), trail_text(report)]
     parts += [_member(member, workings=workings) for member in report.members]
     parts.append(_foot(report))
     return "\n\n".join(part for part in parts if part) + "\n"

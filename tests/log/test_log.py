@@ -23,7 +23,7 @@ from checker.log.sign import add
 from checker.log.verify import verify
 
 ROOT = Path(__file__).parents[2]
-PROCESSES, EACH = 8, int(os.environ.get("SAMESTRUT_LOG_ENTRIES", "40"))
+PROCESSES, EACH = 8, int(os.environ.get("SAMESTRUT_LOG_ENTRIES", "500"))
 FIELDS = {
     "time": "2026-01-02T03:04:05Z", "action": "audited", "person": "A. Person", "role": "checker", "member": "EB-01",
     "document": "d", "revision": "A", "digests": {}, "outcome": "accept", "counts": {}, "open": [], "note": "θ",
