@@ -6,7 +6,8 @@ from html import escape
 from typing import TYPE_CHECKING
 
 from checker.page.charts import interaction_drawing, perimeter_drawing, window_drawing
-from checker.page.section import section_drawing
+from checker.page.places import Places
+from checker.page.section import marked, section_drawing
 from checker.review.drafts import CRASHED, NOT_APPLICABLE, NOT_CHECKED, PASS, difference
 from checker.sheet.shown import number, paper, with_unit
 
@@ -54,19 +55,26 @@ def _findings(member: MemberResult) -> str:
     for finding in member.findings:
         if finding.carried_from is not None:
             carried.setdefault(finding.carried_from, []).append(finding)
-    return "".join(_finding(f, member, carried) for f in member.findings if f.carried_from is None)
+    drawn: set[int] = set()
+    if member.design is not None and member.measured is not None and member.cases:
+        drawn = {finding.number for finding, _ in marked(member, Places(member.design, member.measured))}
+    roots = (finding for finding in member.findings if finding.carried_from is None)
+    return "".join(_finding(finding, member, carried, drawn) for finding in roots)
 
 
-def _finding(finding: Finding, member: MemberResult, carried: dict[int, list[Finding]]) -> str:
+def _finding(
+    finding: Finding, member: MemberResult, carried: dict[int, list[Finding]], drawn: set[int]
+) -> str:
     draft = finding.draft
     under = carried.get(finding.number, [])
-    inner = "".join(_finding(one, member, carried) for one in under)
+    inner = "".join(_finding(one, member, carried, drawn) for one in under)
     folded = (
         f'<details class="carried"><summary>{len(under)} carried from No. {finding.number}: '
         f"{', '.join(f'No. {one.number}' for one in under)}</summary>{inner}</details>"
         if under
         else ""
     )
+    back = f'<p><a href="#mark-{finding.number}">On the drawing</a></p>' if finding.number in drawn else ""
     facts = "".join(
         f"<div><dt>{name}</dt><dd>{escape(text)}</dd></div>" for name, text in _facts(finding, member)
     )
@@ -76,7 +84,7 @@ def _finding(finding: Finding, member: MemberResult, carried: dict[int, list[Fin
         f'<span class="quiet">({escape(draft.direction)}) {escape(draft.rule)} '
         f'<span class="mono">[{finding.id}]</span></span></h4>'
         f"<p>{escape(draft.says)}</p><p><b>To do:</b> {escape(draft.todo)}</p>"
-        f'<dl class="facts">{facts}</dl>{_workings(finding)}{folded}</article>'
+        f'<dl class="facts">{facts}</dl>{back}{_workings(finding)}{folded}</article>'
     )
 
 

@@ -195,6 +195,6 @@ def _badges(marks: list[tuple[Finding, Point]], frame: Frame) -> Iterator[str]:
         words = svg.text((x, y + 3.8), str(finding.number), size=10.5, anchor="middle")
         grave = finding.draft.gravity
         yield (
-            f'<a href="#finding-{finding.number}" class="badge" data-number="{finding.number}" '
+            f'<a id="mark-{finding.number}" href="#finding-{finding.number}" class="badge" data-number="{finding.number}" '
             f'aria-label="Finding {finding.number}, {grave}">{shape}{words}</a>'
         )

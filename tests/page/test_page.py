@@ -227,6 +227,8 @@ def test_browser_filters_folds_and_follows_links(opened):
     badge.click()
     assert opened.evaluate("location.hash") == f"#finding-{number}"
     assert opened.locator(f"#finding-{number}").is_visible()
+    opened.locator(f'#finding-{number} a[href="#mark-{number}"]').first.click()
+    assert opened.evaluate("location.hash") == f"#mark-{number}"
 
 
 def test_browser_works_by_keyboard_alone(opened):
