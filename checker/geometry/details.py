@@ -50,7 +50,7 @@ def detail_inputs(
         ),
         **_sides(bars, outline),
         **_bends(design),
-        **_link_lap(design),
+        **_link_lap(design, outline.height),
     }
 
 
@@ -116,15 +116,20 @@ def _bends(design: Design) -> dict[str, float]:
     return found
 
 
-def _link_lap(design: Design) -> dict[str, float]:
-    """Return the shortest lap of the links by their diameter, and that diameter."""
+def _link_lap(design: Design, height: float) -> dict[str, float]:
+    """Return the lap of the links that is shortest for what it needs, its diameter, and whether its bond is good.
+
+    A lap on the top leg lies in the worse concrete above 250 mm (8.4.2(2)); so it is taken where the leg is unsaid.
+    """
     laps = [
-        (links.lap.value, links.diameter.value)
+        (links.lap.value, links.diameter.value, float(links.lap_on in ("side", "bottom") or height <= 250))
         for links in design.links
         if links.ends == "lapped" and links.lap is not None
     ]
-    lap, size = min(laps, key=lambda pair: pair[0] / pair[1], default=(nan, nan))
-    return {"lap_link": lap, "phi_lap_link": size}
+    lap, size, good = min(
+        laps, key=lambda one: one[0] / one[1] * (1.0 if one[2] else 0.7), default=(nan, nan, nan)
+    )
+    return {"lap_link": lap, "phi_lap_link": size, "lap_link_good": good}
 
 
 def _anchored(design: Design) -> Fact:

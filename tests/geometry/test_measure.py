@@ -21,7 +21,7 @@ a_s_bottom a_s_top A_s_bottom A_s_top A_half_bottom A_half_top A_s_all phi_link 
 n_legs A_sw_s_all A_leg_s S_sin S_cos alpha eta_leg leg_gap gap_bars phi_long_max n_flanges torsion_parts
 clear_least clear_by_size phi_clear phi_corner_least phi_bundle n_bundle phi_single_max phi_link_all phi_least_bottom
 phi_least_top n_aslant_inner A_enclosing_s A_legs_s A_skin_sagging A_skin_hogging A_side_least mandrel_link
-phi_mandrel_link mandrel_bar phi_mandrel_bar lap_link phi_lap_link"""
+phi_mandrel_link mandrel_bar phi_mandrel_bar lap_link phi_lap_link lap_link_good"""
 TEE = (
     (0.0, 0.0),
     (300.0, 0.0),
@@ -55,7 +55,7 @@ def test_measured_beam_by_hand(sound_beam):
         "A_skin_sagging": 2 * area[12], "A_skin_hogging": 2 * area[12],
         "A_side_least": 2 * area[12] + area[25] / 2 + area[20] / 2,
         "mandrel_link": nan, "phi_mandrel_link": nan, "mandrel_bar": nan, "phi_mandrel_bar": nan,
-        "lap_link": nan, "phi_lap_link": nan,
+        "lap_link": nan, "phi_lap_link": nan, "lap_link_good": nan,
     }  # fmt: skip
     assert set(measured.inputs) == set(KEYS.split())
     assert dict(measured.inputs) == pytest.approx(expected, nan_ok=True)
