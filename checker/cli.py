@@ -32,7 +32,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
     for stream in (sys.stdout, sys.stderr):  # a terminal that can't show θ still gets the rest
         if isinstance(stream, io.TextIOWrapper):
             stream.reconfigure(errors="replace")
-    options = _parser().parse_args(arguments)
+    words = list(sys.argv[1:] if arguments is None else arguments)
+    options = _parser(words[:1] == ["log"]).parse_args(words)
     try:
         code: int = options.run(options)
         sys.stdout.flush()
@@ -52,7 +53,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
         return 130
 
 
-def _parser() -> argparse.ArgumentParser:
+def _parser(log_wanted: bool) -> argparse.ArgumentParser:
     parser = argparse.ArgumentParser(
         prog="samestrut",
         description="Audits declared designs of concrete beams in shear and torsion to Eurocode 2 "
@@ -124,7 +125,7 @@ def _parser() -> argparse.ArgumentParser:
     slips.add_argument("--rules", metavar="FILE", help="an office's own slips, laid over the shipped ones")
     slips.set_defaults(run=_slips)
 
-    add_log(commands)
+    add_log(commands, wanted=log_wanted)
 
     schema = commands.add_parser("schema", help="print the JSON Schema of a file this tool reads or writes")
     schema.add_argument("name", choices=SCHEMAS, metavar="NAME", help=", ".join(SCHEMAS))

@@ -7,16 +7,18 @@ import sys
 from pathlib import Path
 from typing import Any
 
-ROLES = ("prepared", "checked", "approved")
+from checker.log import ACTIONS
 
 
-def add_log(commands: Any) -> None:
-    """Add `log` and its sub-commands to the parser's commands."""
+def add_log(commands: Any, *, wanted: bool) -> None:
+    """Add `log` to the parser's commands; its own commands only where it is `wanted`, so that no other pays for them."""
     log = commands.add_parser("log", help="keep the sign-off log: add, show, verify, head")
+    if not wanted:
+        return
     kinds = log.add_subparsers(metavar="WHAT", required=True)
     add = kinds.add_parser("add", help="add an entry about a report")
     add.add_argument("log", metavar="LOG")
-    add.add_argument("action", choices=("audited", "responded", "waived", "checked", "approved", "withdrawn"))
+    add.add_argument("action", choices=ACTIONS)
     add.add_argument("--report", required=True, metavar="REPORT.json")
     add.add_argument("--person", required=True, metavar="NAME")
     add.add_argument("--role", default="", metavar="ROLE", help="in which capacity")
@@ -55,15 +57,10 @@ def _add(options: argparse.Namespace) -> int:
 def _show(options: argparse.Namespace) -> int:
     from tabulate import tabulate
 
-    from checker.log.entry import read_entry
-    from checker.log.journal import BrokenLogError, entries
+    from checker.log.journal import entries
 
     rows = []
-    for number, raw in entries(Path(options.log)):
-        try:
-            entry = read_entry(raw.rstrip(b"\n"))
-        except ValueError as error:
-            raise BrokenLogError(f"{options.log}, line {number}: {error}") from None
+    for entry in entries(Path(options.log)):
         if options.action not in ("", entry["action"]) or options.member not in entry["member"]:
             continue
         opened = ", ".join(map(str, entry["open"])) or "–"

@@ -115,7 +115,8 @@ def audit(
     stamp = _stamp(annexes, options)
     if previous is None:
         return AuditReport(stamp, tuple(inputs), outcome, tuple(members), tuple(faults))
-    from checker.trail import continued, read_previous
+    from checker.saved import read_saved
+    from checker.trail import continued
 
     said = {
         "standard": stamp.standard,
@@ -123,7 +124,8 @@ def audit(
         "digest": stamp.digest,
         "version": stamp.version,
     }
-    kept, trail = continued(members, read_previous(Path(previous)), renamed or {}, said)
+    before, _ = read_saved(Path(previous))
+    kept, trail = continued(members, before, renamed or {}, said)
     return AuditReport(stamp, tuple(inputs), outcome, kept, tuple(faults), trail)
 
 

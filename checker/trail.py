@@ -6,13 +6,10 @@
 
 from __future__ import annotations
 
-import json
 import math
 from collections.abc import Iterable, Mapping
-from pathlib import Path
 from typing import Any, NamedTuple
 
-from checker.errors import UsageError
 from checker.review.drafts import NOT_CHECKED
 from checker.review.findings import Finding, MemberResult, identity
 from checker.sheet.shown import to_shown
@@ -49,21 +46,6 @@ class Trail(NamedTuple):
     highest: int
     steps: tuple[Step, ...]
     differs: tuple[str, ...]
-
-
-def read_previous(path: Path) -> dict[str, Any]:
-    """The document of an earlier report.
-
-    Raises:
-        UsageError: it can't be read, or is no report.
-    """
-    try:
-        document = json.loads(path.read_bytes())
-    except (OSError, ValueError) as error:
-        raise UsageError(f"{path}: can't be read as an earlier report: {error}") from None
-    if not isinstance(document, dict) or not {"members", "rules", "tool"} <= set(document):
-        raise UsageError(f"{path}: is not a report (expected what samestrut audit -o report.json writes)")
-    return document
 
 
 def continued(
@@ -106,7 +88,9 @@ def continued(
         kept.append(member._replace(findings=tuple(_renumbered(f, numbers) for f in member.findings)))
     steps += _gone(waiting, old, kept, renamed)
     since = ", ".join(dict.fromkeys(m["revision"] for m in before["members"] if m["revision"]))
-    return tuple(kept), Trail(since, highest, tuple(sorted(steps)), _differs(before, stamp))
+    return tuple(kept), Trail(
+        since, highest, tuple(sorted(steps, key=lambda step: step.number)), _differs(before, stamp)
+    )
 
 
 def _renumbered(finding: Finding, numbers: Mapping[int, int]) -> Finding:

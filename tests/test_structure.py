@@ -15,6 +15,7 @@ ORDER = [
     "geometry",
     "sheet",
     "review",
+    "saved",
     "trail",
     "report",
     "page",

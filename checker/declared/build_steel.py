@@ -54,7 +54,7 @@ def build_links(sets: list[Values], faults: Faults) -> list[LinkSet]:
                 f_ywk=values.get("f_ywk", Number),
                 mandrel=values.get("mandrel", Number),
                 lap_on=values.get("lap_on", str),
-                at=tuple(number.value for number in values.get("at", list) or ()),
+                at=tuple(number.value for number in at or ()),
             )
         )
     return links

@@ -38,26 +38,34 @@ COVER_DETAILS = Record(
     ),
 )
 
-_SHAPE = Field(
-    "shape", "choice", "How the bars end; straight if left out.", choices=("straight", "bend", "hook", "loop")
+_BAR_END = (
+    Field("length", "number", "Length provided.", True, "mm", least=0, most=100_000),
+    Field("diameter", "number", "Diameter of the bars.", True, "mm", least=3, most=100),
+    Field(
+        "shape",
+        "choice",
+        "How the bars end; straight if left out.",
+        choices=("straight", "bend", "hook", "loop"),
+    ),
+    Field("bond", "choice", "Bond conditions; the worse if left out.", choices=("other", "good")),
+    _mm("c_d", "Least of cover, side cover and half the clear distance (8.4.4).", 1000),
+    Field(
+        "stress",
+        "number",
+        "Stress in the bar where it begins; f_yd if left out.",
+        unit="MPa",
+        least=0,
+        most=2000,
+    ),
+    Field("pressure", "number", "Pressure across the bar.", unit="MPa", least=0, most=100),
 )
-_BOND = Field("bond", "choice", "Bond conditions; the worse if left out.", choices=("other", "good"))
-_STRESS = Field(
-    "stress", "number", "Stress in the bar where it begins; f_yd if left out.", unit="MPa", least=0, most=2000
-)
-_PRESSURE = Field("pressure", "number", "Pressure across the bar.", unit="MPa", least=0, most=100)
+"""What an anchorage and a lap have in common."""
 
 ANCHORAGE = Record(
     "anchorage",
     "The anchorage of longitudinal bars to be checked, the shortest one.",
     (
-        Field("length", "number", "Length provided.", True, "mm", least=0, most=100_000),
-        Field("diameter", "number", "Diameter of the bars.", True, "mm", least=3, most=100),
-        _SHAPE,
-        _BOND,
-        _mm("c_d", "Least of cover, side cover and half the clear distance (8.4.4).", 1000),
-        _STRESS,
-        _PRESSURE,
+        *_BAR_END,
         Field(
             "in", "choice", "What the bars carry; tension if left out.", choices=("tension", "compression")
         ),
@@ -68,13 +76,7 @@ LAP = Record(
     "lap",
     "The lap of longitudinal bars to be checked, the shortest one.",
     (
-        Field("length", "number", "Length provided.", True, "mm", least=0, most=100_000),
-        Field("diameter", "number", "Diameter of the bars.", True, "mm", least=3, most=100),
-        _SHAPE,
-        _BOND,
-        _mm("c_d", "Least of cover, side cover and half the clear distance (8.4.4).", 1000),
-        _STRESS,
-        _PRESSURE,
+        *_BAR_END,
         Field(
             "share", "number", "Share lapped within 0.65 l_0, such as 50 %; all if left out.", least=0, most=1
         ),

@@ -33,6 +33,15 @@ _MATERIALS = Record(
     ),
 )
 
+_MANDREL = Field(
+    "mandrel",
+    "number",
+    "Diameter of the mandrel the bends are made on.",
+    unit="mm",
+    least=1,
+    most=2000,
+)
+
 _LINKS = Record(
     "links",
     "One set of links.",
@@ -68,14 +77,7 @@ _LINKS = Record(
             least=100,
             most=2000,
         ),
-        Field(
-            "mandrel",
-            "number",
-            "Diameter of the mandrel the bends are made on.",
-            unit="mm",
-            least=1,
-            most=2000,
-        ),
+        _MANDREL,
         Field("lap_on", "choice", "Which leg the lap lies on.", choices=("side", "top", "bottom")),
         Field(
             "at", "numbers", "Places of an inner set's legs across the web, from its left side.", unit="mm"
@@ -124,14 +126,7 @@ _BARS = Record(
             least=1,
             most=4,
         ),
-        Field(
-            "mandrel",
-            "number",
-            "Diameter of the mandrel the bends are made on.",
-            unit="mm",
-            least=1,
-            most=2000,
-        ),
+        _MANDREL,
         Field("anchored", "choice", "Anchored beyond the section.", choices=("fully", "not")),
     ),
     (Form(("bars",)), Form(("diameter",), ("count",))),

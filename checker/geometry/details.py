@@ -7,7 +7,7 @@
 from __future__ import annotations
 
 from itertools import combinations
-from math import hypot, inf, nan, pi, sin
+from math import hypot, inf, nan, sin
 from typing import TYPE_CHECKING
 
 from checker.geometry.bars import Bar, Cage
@@ -38,44 +38,46 @@ def detail_inputs(
         "phi_bundle": max((g.size for g in design.bars if g.bundle > 1), default=nan),
         "n_bundle": max((float(g.bundle) for g in design.bars if g.bundle > 1), default=nan),
         "phi_single_max": max(group.diameter.value for group in design.bars),
-        "phi_link_all": max((links.diameter.value for links in design.links), default=0.0),
         "phi_least_bottom": _least_on(bars, "bottom"),
         "phi_least_top": _least_on(bars, "top"),
         "n_aslant_inner": float(len(leaning)) if enclosing_upright else 0.0,
         "A_enclosing_s": sum(
             links.legs * leg_area_by_length(links) * sin(links.angle) for links in perimeter_links(design)
         ),
-        "A_legs_s": sum(
-            links.legs * pi * links.diameter.value**2 / 4 / links.spacing.value for links in web_links(design)
-        ),
+        "A_legs_s": sum(links.legs * leg_area_by_length(links) for links in web_links(design)),
         **_sides(bars, outline),
         **_bends(design),
         **_link_lap(design, outline.height),
     }
 
 
-def detail_facts(design: Design, bars: tuple[Bar, ...], cage: Cage, torsion_place: Fact) -> dict[str, Fact]:
+def detail_facts(design: Design, bars: tuple[Bar, ...], cage: Cage, enclosing: Fact) -> dict[str, Fact]:
     """Return the facts `torsion_bars_anchored`, `hooks_bent_in`, `lap_leg` and `inner_bends_filled`."""
     return {
         "torsion_bars_anchored": _anchored(design),
-        "hooks_bent_in": _hooks(design, torsion_place),
-        "lap_leg": _lap_leg(design, torsion_place),
+        "hooks_bent_in": _hooks(design, enclosing),
+        "lap_leg": _lap_leg(design, enclosing),
         "inner_bends_filled": _inner_bends(design, bars, cage),
     }
 
 
+def _clear(a: Bar, b: Bar) -> float:
+    return hypot(a.x - b.x, a.y - b.y) - (a.diameter + b.diameter) / 2
+
+
+def nearest_pair(bars: tuple[Bar, ...]) -> tuple[Bar, Bar] | None:
+    """Return the two bars with least between them beyond the size of the larger (8.2(2)); None of fewer than two."""
+    pairs = combinations(sorted(bars, key=lambda bar: (bar.x, bar.y)), 2)
+    return min(pairs, key=lambda pair: _clear(*pair) - max(pair[0].diameter, pair[1].diameter), default=None)
+
+
 def _clear_distances(bars: tuple[Bar, ...]) -> tuple[float, float, float]:
-    """Return the least clear distance, and that of the pair with least to spare beyond the larger bar, with its size."""
-    clear, by_size, size = inf, inf, 0.0
-    spare = inf
-    ordered = sorted(bars, key=lambda bar: (bar.x, bar.y))
-    for a, b in combinations(ordered, 2):
-        larger = max(a.diameter, b.diameter)
-        gap = hypot(a.x - b.x, a.y - b.y) - (a.diameter + b.diameter) / 2
-        clear = min(clear, gap)
-        if gap - larger < spare - 1e-9:
-            spare, by_size, size = gap - larger, gap, larger
-    return clear, by_size, size
+    """Return the least clear distance, and that of the nearest pair for its size, with the size."""
+    nearest = nearest_pair(bars)
+    if nearest is None:
+        return inf, inf, 0.0
+    least = min(_clear(a, b) for a, b in combinations(bars, 2))
+    return least, _clear(*nearest), max(nearest[0].diameter, nearest[1].diameter)
 
 
 def _least_on(bars: tuple[Bar, ...], face: str) -> float:

@@ -101,9 +101,15 @@ def c_axis(bars: tuple[Bar, ...], outline: Outline, cage: Cage, in_corners: dict
 
 
 def gap_bars(bars: tuple[Bar, ...], outline: Outline, cage: Cage) -> float:
-    """Return the largest distance between neighbouring bars along the centre-line of the link, mm (9.2.3(4)).
+    """Return the largest distance between neighbouring bars along the centre-line of the link, mm (9.2.3(4))."""
+    return widest_gap(bars, outline, cage)[0]
 
-    A bar counts on each leg it stands at, so that a corner bar is measured from its own centre either way.
+
+def widest_gap(bars: tuple[Bar, ...], outline: Outline, cage: Cage) -> tuple[float, float]:
+    """Return the widest gap between bars along the centre-line of the link, and where its middle lies along it, mm.
+
+    Measured anticlockwise from the first corner, on a circle from its right. A bar counts on each leg it stands
+    at, so that a corner bar is measured from its own centre either way.
     """
     inwards = cage.cover + cage.phi_link / 2
     if outline.circle_diameter is not None:
@@ -117,9 +123,10 @@ def gap_bars(bars: tuple[Bar, ...], outline: Outline, cage: Cage) -> float:
     else:
         feet, length = _feet(bars, outline, cage)
     if not feet:
-        return length
+        return length, 0.0
     feet.sort()
-    return max([feet[0] + length - feet[-1], *(b - a for a, b in pairwise(feet))])
+    width, start = max((b - a, a) for a, b in pairwise((*feet, feet[0] + length)))
+    return width, (start + width / 2) % length
 
 
 def _reach(bar: Bar, cage: Cage) -> float:

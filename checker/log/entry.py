@@ -11,7 +11,6 @@ import json
 from collections.abc import Mapping
 from typing import Any
 
-ACTIONS = ("audited", "responded", "waived", "checked", "approved", "withdrawn")
 FIRST = "0" * 64
 FIELDS = (
     "sequence", "time", "action", "person", "role", "member", "document", "revision", "digests", "outcome", "counts",

@@ -46,13 +46,26 @@ def append(path: Path, fields: Mapping[str, Any]) -> dict[str, Any]:
         raise UsageError(f"{path}: can't be written: {error.strerror}; nothing was added") from None
 
 
-def entries(path: Path) -> Iterator[tuple[int, bytes]]:
-    """The lines with their numbers, without their ends."""
+def lines(path: Path) -> Iterator[tuple[int, bytes]]:
+    """The lines with their numbers, each with its end."""
     try:
         with open(path, "rb") as stream:
-            yield from enumerate((line for line in stream), 1)
+            yield from enumerate(stream, 1)
     except OSError as error:
         raise UsageError(f"{path}: can't be read: {error.strerror}") from None
+
+
+def entries(path: Path) -> Iterator[dict[str, Any]]:
+    """The entries, each read for itself; whether the chain holds is for `verify`.
+
+    Raises:
+        BrokenLogError: a line that is no entry.
+    """
+    for number, raw in lines(path):
+        try:
+            yield read_entry(raw.rstrip(b"\n"))
+        except ValueError as error:
+            raise BrokenLogError(f"{path}, line {number}: {error}") from None
 
 
 @contextmanager

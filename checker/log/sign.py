@@ -3,15 +3,14 @@
 from __future__ import annotations
 
 import hashlib
-import json
 from collections.abc import Mapping
 from datetime import UTC, datetime
 from pathlib import Path
 from typing import Any
 
 from checker.errors import UsageError
-from checker.log.entry import read_entry
 from checker.log.journal import append, entries
+from checker.saved import read_saved
 
 Fields = dict[str, Any]
 
@@ -24,7 +23,7 @@ def add(
 
     Args:
         log: the log's file.
-        action: one of `ACTIONS`.
+        action: one of `checker.log.ACTIONS`.
         report: the report's JSON file.
         same_person: why the approver may be the checker.
         now: the time to write (the present one where left out).
@@ -32,7 +31,7 @@ def add(
     Raises:
         UsageError: the report can't be read, or approval is refused.
     """
-    document, digest = read_report(report)
+    document, digest = read_saved(report)
     fields = {**_about(document), "digests": _digests(document, digest)}
     if action == "approved":
         _may_approve(log, person, document, report, digest, same_person)
@@ -43,18 +42,6 @@ def add(
     return append(
         log, {**fields, "time": when, "action": action, "person": person, "role": role, "note": said}
     )
-
-
-def read_report(report: Path) -> tuple[Mapping[str, Any], str]:
-    """A report's document and the SHA-256 of its bytes."""
-    try:
-        raw = report.read_bytes()
-        document = json.loads(raw)
-    except (OSError, ValueError) as error:
-        raise UsageError(f"{report}: can't be read as a report: {error}") from None
-    if not isinstance(document, dict) or "members" not in document or "outcome" not in document:
-        raise UsageError(f"{report}: is not a report (expected what samestrut audit -o report.json writes)")
-    return document, hashlib.sha256(raw).hexdigest()
 
 
 def _about(document: Mapping[str, Any]) -> Fields:
@@ -95,9 +82,8 @@ def _may_approve(
             raise UsageError(f"not approved: {item['file']} is no longer what the report was made from")
     checked = [
         entry
-        for _, raw in (entries(log) if log.exists() else ())
-        if (entry := read_entry(raw.rstrip(b"\n")))["action"] == "checked"
-        and entry["digests"]["report"] == digest
+        for entry in (entries(log) if log.exists() else ())
+        if entry["action"] == "checked" and entry["digests"]["report"] == digest
     ]
     if not checked:
         raise UsageError("not approved: nobody has logged this report as checked")

@@ -5,7 +5,7 @@ from __future__ import annotations
 from pathlib import Path
 
 from checker.log.entry import FIRST, digest_of, read_entry
-from checker.log.journal import BrokenLogError, entries
+from checker.log.journal import BrokenLogError, lines
 
 
 def verify(path: Path, head: str | None = None) -> tuple[int, str]:
@@ -19,7 +19,7 @@ def verify(path: Path, head: str | None = None) -> tuple[int, str]:
         BrokenLogError: names the first entry that doesn't hold and why.
     """
     before, count = FIRST, 0
-    for number, raw in entries(path):
+    for number, raw in lines(path):
         if not raw.endswith(b"\n"):
             raise BrokenLogError(f"{path.name}, line {number}: torn: it has no end")
         try:

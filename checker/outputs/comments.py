@@ -34,8 +34,7 @@ def comment_rows(report: AuditReport) -> list[list[str | int]]:
     for member in report.members:
         for finding in member.findings:
             draft = finding.draft
-            place = ", ".join(f"{member.file}:{spot.line}:{spot.column}" for spot in draft.where)
-            case = draft.case or ", ".join(draft.cases)
+            place, case = draft.places(member.file), ", ".join(draft.case_names)
             told = f" (carried from No. {finding.carried_from})" if finding.carried_from else ""
             filled: list[str | int] = [finding.number, finding.id, member.member, case, place, draft.clause, draft.gravity,
                       draft.says + told, draft.todo]  # fmt: skip

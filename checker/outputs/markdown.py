@@ -5,14 +5,14 @@ from __future__ import annotations
 import re
 from typing import TYPE_CHECKING
 
-from checker.report.text import CAUTIONS, OUTCOME_WORDS
+from checker.report.text import CAUTIONS, OUTCOME_WORDS, about_text, value_text
 from checker.review.drafts import NOT_CHECKED
-from checker.sheet.shown import paper, with_unit
 
 if TYPE_CHECKING:
     from checker.report.audit_report import AuditReport
     from checker.review.findings import Finding, MemberResult
 
+VALUES = ("declared", "recomputed", "limit")
 _MARKS = re.compile(r"([\\`*_{}\[\]()#+!|<>~&])")
 
 
@@ -40,7 +40,14 @@ def plain(text: str) -> str:
 
 def _member(member: MemberResult) -> str:
     rows = [
-        (str(f.number), f.draft.gravity, f.draft.case or "member", *_values(f), f.draft.clause)
+        (
+            str(f.number),
+            f.draft.gravity,
+            f.draft.case or "member",
+            about_text(f),
+            *(value_text(f, name) for name in VALUES),
+            f.draft.clause,
+        )
         for f in member.findings
     ]
     revision = f", revision {member.revision}" if member.revision else ""
@@ -56,30 +63,14 @@ def _member(member: MemberResult) -> str:
     return "\n\n".join(parts)
 
 
-def _values(finding: Finding) -> tuple[str, str, str, str]:
-    draft = finding.draft
-    shown = [
-        "–" if value is None else with_unit(value, draft.unit or "-")
-        for value in (draft.declared, draft.recomputed, draft.limit)
-    ]
-    about = paper(draft.quantity) if draft.quantity and draft.declared is not None else draft.rule
-    return (
-        about,
-        draft.declared_text if draft.declared is None and draft.declared_text else shown[0],
-        shown[1],
-        shown[2],
-    )
-
-
 def _finding(finding: Finding, file: str) -> str:
     draft = finding.draft
     hangs = f", carried from No. {finding.carried_from}" if finding.carried_from else ""
-    places = ", ".join(f"{file}:{spot.line}:{spot.column}" for spot in draft.where)
     lines = [
         f"### No. {finding.number} {draft.gravity} ({plain(draft.direction)}{hangs}): {plain(draft.rule)}",
         plain(draft.says),
         f"**To do:** {plain(draft.todo)}",
-        f"Clause {plain(draft.clause)}; {plain(places)}; id {finding.id}",
+        f"Clause {plain(draft.clause)}; {plain(draft.places(file))}; id {finding.id}",
     ]
     if draft.wrong_working:
         lines.append(f"Wrong working: {plain(draft.wrong_working)}")

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 
 from checker.page import svg
 from checker.review.window import Span, common_span
-from checker.sheet.shown import number, to_shown
+from checker.sheet.shown import number, with_unit
 
 if TYPE_CHECKING:
     from checker.review.findings import CaseResult, MemberResult
@@ -65,13 +65,15 @@ def window_drawing(member: MemberResult, name: str) -> str:
     told.append(f"all cases together {_span_words(common)}")
     for case in member.cases:
         for side, mark in (("shear", "V"), ("torsion", "T")):
-            if not case.values.get(f"has_{side}", case.values.get(mark, 0.0)):
+            if not case.values[mark]:
                 continue
             cot = case.values[f"cot_theta_{side}"]
             body.append(svg.line((_along(cot), top), (_along(cot), y + 16), stroke=svg.INK, dash="2 2"))
             said = "claimed" if case.claimed else "worked out"
             told.append(f"case {case.case}: {said} for {side} {_angle(cot)}")
-    cots = {round(case.values[f"cot_theta_{s}"], 3): s for case in member.cases for s in ("shear", "torsion")}
+    cots = dict.fromkeys(
+        round(c.values[f"cot_theta_{s}"], 3) for c in member.cases for s in ("shear", "torsion")
+    )
     y += 28
     for cot in cots:
         body.append(svg.text((_along(cot), y), f"▲ {_angle(cot)}", size=10, anchor="middle"))
@@ -114,11 +116,11 @@ def interaction_drawing(member: MemberResult, name: str) -> str:
         svg.line(at(crack[0], 0), at(0, crack[1]), stroke=svg.QUIET, width=1.5, dash="6 3"),
         svg.text(at(crush[0] * 0.86, crush[1] * 0.2), "struts crush", size=10, fill=svg.ALARM),
         svg.text((at(crack[0], 0)[0] * 0.5 + left * 0.5, at(0, crack[1] * 0.5)[1] - 4), "cracks", size=10, fill=svg.QUIET),
-        svg.text((left + size, base + 16), f"V, to {_shown(most_v, 'kN')}", size=10, anchor="end", fill=svg.QUIET),
-        svg.text((left - 8, base - size + 4), f"T, to {_shown(most_t, 'kNm')}", size=10, fill=svg.QUIET, anchor="start"),
+        svg.text((left + size, base + 16), f"V, to {with_unit(most_v, 'kN', 3)}", size=10, anchor="end", fill=svg.QUIET),
+        svg.text((left - 8, base - size + 4), f"T, to {with_unit(most_t, 'kNm', 3)}", size=10, fill=svg.QUIET),
     ]  # fmt: skip
-    told = [f"struts crush at V {_shown(crush[0], 'kN')} or T {_shown(crush[1], 'kNm')}",
-            f"concrete cracks at V {_shown(crack[0], 'kN')} or T {_shown(crack[1], 'kNm')}"]  # fmt: skip
+    told = [f"struts crush at V {with_unit(crush[0], 'kN', 3)} or T {with_unit(crush[1], 'kNm', 3)}",
+            f"concrete cracks at V {with_unit(crack[0], 'kN', 3)} or T {with_unit(crack[1], 'kNm', 3)}"]  # fmt: skip
     for index, case in enumerate(member.cases, 1):
         x, y = at(case.values["V"], case.values["T"])
         body += [
@@ -126,7 +128,7 @@ def interaction_drawing(member: MemberResult, name: str) -> str:
             svg.text((x + 6, y - 5), f"{index} {case.case[:20]}", size=10),
         ]
         told.append(
-            f"case {case.case}: V {_shown(case.values['V'], 'kN')}, T {_shown(case.values['T'], 'kNm')}"
+            f"case {case.case}: V {with_unit(case.values['V'], 'kN', 3)}, T {with_unit(case.values['T'], 'kNm', 3)}"
         )
     title = f"Torsion against shear, {member.member}"
     return svg.picture(name, left + size + 40, base + 26, title, "; ".join(told) + ".", body)
@@ -170,7 +172,3 @@ def _needed_and_provided(need: float, have: float, most: float, y: float) -> lis
         svg.rect((LEFT, below + 2), 200 * have / most, 11, fill=svg.STEEL),
         svg.text((LEFT + 206, below + 12), words, size=10, fill=svg.ALARM if short else svg.INK),
     ]
-
-
-def _shown(value: float, unit: str) -> str:
-    return f"{number(to_shown(value, unit), 3)} {unit}"

@@ -19,23 +19,30 @@ def member_part(member: MemberResult, index: int) -> str:
     """The member's part of the page; `index` counts members from 1 and makes its ids unique."""
     said = member.design.submission if member.design is not None else {}
     who = "".join(f"<div><dt>{escape(key)}</dt><dd>{escape(text)}</dd></div>" for key, text in said.items())
-    findings = _findings(member) or "<p>Nothing was found.</p>"
+    drawings, drawn = _drawings(member, index)
+    findings = _findings(member, drawn) or "<p>Nothing was found.</p>"
     return (
         f'<section class="member" id="member-{index}" data-outcome="{member.outcome}" '
         f'data-name="{escape(member.member)}" aria-labelledby="member-{index}-head">'
         f'<h2 id="member-{index}-head">{index}. {escape(member.member)} — {member.outcome}</h2>'
         f'<dl class="facts">{who}<div><dt>file</dt><dd>{escape(member.file)}</dd></div></dl>'
-        f"<h3>{index}.1 Drawings</h3>{_drawings(member, index)}"
+        f"<h3>{index}.1 Drawings</h3>{drawings}"
         f"<h3>{index}.2 Findings</h3>{findings}"
         f"<h3>{index}.3 Checks</h3>{_checks(member)}</section>"
     )
 
 
-def _drawings(member: MemberResult, index: int) -> str:
+def _drawings(member: MemberResult, index: int) -> tuple[str, set[int]]:
+    """The drawings, and the numbers of the findings that have a mark on them."""
     if member.measured is None or member.design is None or not member.cases:
-        return ""
+        return "", set()
+    places = Places(member.design, member.measured)
+    marks = marked(member, places)
     drawn = [
-        ("Section, to scale; numbers lead to the findings", section_drawing(member, f"s{index}")),
+        (
+            "Section, to scale; numbers lead to the findings",
+            section_drawing(member, places, marks, f"s{index}"),
+        ),
         (
             "Strut window: the angles on which links, struts and bars hold",
             window_drawing(member, f"w{index}"),
@@ -46,18 +53,15 @@ def _drawings(member: MemberResult, index: int) -> str:
     figures = "".join(
         f"<figure>{picture}<figcaption>{words}</figcaption></figure>" for words, picture in drawn
     )
-    return f'<div class="drawings">{figures}</div>'
+    return f'<div class="drawings">{figures}</div>', {finding.number for finding, _ in marks}
 
 
-def _findings(member: MemberResult) -> str:
+def _findings(member: MemberResult, drawn: set[int]) -> str:
     """Roots in the order of their numbers, each with what is carried folded under it."""
     carried: dict[int, list[Finding]] = {}
     for finding in member.findings:
         if finding.carried_from is not None:
             carried.setdefault(finding.carried_from, []).append(finding)
-    drawn: set[int] = set()
-    if member.design is not None and member.measured is not None and member.cases:
-        drawn = {finding.number for finding, _ in marked(member, Places(member.design, member.measured))}
     roots = (finding for finding in member.findings if finding.carried_from is None)
     return "".join(_finding(finding, member, carried, drawn) for finding in roots)
 
@@ -105,8 +109,8 @@ def _facts(finding: Finding, member: MemberResult) -> list[tuple[str, str]]:
         found.append(("tolerance", with_unit(draft.tolerance, unit)))
     if draft.clause:
         found.append(("clause", draft.clause))
-    found.append(("case", ", ".join((draft.case,) if draft.case else draft.cases)))
-    places = ", ".join(f"{member.file}:{spot.line}:{spot.column}" for spot in draft.where)
+    found.append(("case", ", ".join(draft.case_names)))
+    places = draft.places(member.file)
     return [*found, ("place", places)] if places else found
 
 

@@ -3,11 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Callable
-from itertools import combinations, pairwise
-from math import atan2, cos, hypot, pi, sin
+from functools import cached_property
+from itertools import pairwise
+from math import cos, hypot, pi, sin
 from typing import TYPE_CHECKING
 
-from checker.geometry import polygons, steel
+from checker.geometry import details, polygons, steel
 from checker.geometry.bars import Bar, Cage, cage_of
 from checker.geometry.outline import Outline, web_of
 
@@ -37,14 +38,15 @@ class Places:
         find = _BY_RULE.get(rule) or _BY_RULE.get(rule.split(".")[0]) or _BY_QUANTITY.get(quantity)
         return find(self, finding) if find is not None else None
 
+    @cached_property
+    def web_bars(self) -> tuple[Bar, ...]:
+        """The bars within the web, in its own coordinates, as they are measured."""
+        own = (bar._replace(x=bar.x - self.shift) for bar in self.bars)
+        return tuple(bar for bar in own if self.web is self.measured.outline or 0 <= bar.x <= self.web.width)
+
     def link_line(self) -> tuple[Point, ...]:
         """The centre-line of the perimeter link; a circle as 48 points."""
-        if self.web.circle_diameter is not None:
-            r = self.web.circle_diameter / 2
-            steps = [2 * pi * k / 48 for k in range(48)]
-            return tuple((r + (r - self.inwards) * cos(a), r + (r - self.inwards) * sin(a)) for a in steps)
-        line = polygons.inset(self.web.points, self.inwards)
-        return tuple((x + self.shift, y) for x, y in line)
+        return self.wall_line(self.inwards)
 
     def wall_line(self, t: float) -> tuple[Point, ...]:
         """The outline moved inwards by some part of the equivalent wall."""
@@ -65,8 +67,7 @@ class Places:
         return right - self.inwards + self.shift, level
 
     def corner_without_bar(self) -> Point:
-        own = tuple(bar._replace(x=bar.x - self.shift) for bar in self.bars)
-        for i, found in steel.corner_bars(own, self.web, self.cage).items():
+        for i, found in steel.corner_bars(self.web_bars, self.web, self.cage).items():
             if not found:
                 line = self.link_line()
                 corner = self.web.points[i]
@@ -74,10 +75,9 @@ class Places:
         return self.hook()
 
     def thinnest_corner_bar(self) -> Point:
-        own = tuple(bar._replace(x=bar.x - self.shift) for bar in self.bars)
         held = [
             max(f, key=lambda b: b.diameter)
-            for f in steel.corner_bars(own, self.web, self.cage).values()
+            for f in steel.corner_bars(self.web_bars, self.web, self.cage).values()
             if f
         ]
         if not held:
@@ -87,51 +87,26 @@ class Places:
 
     def widest_gap(self) -> Point:
         """The middle, along the link, of the widest gap between bars."""
+        _, along = steel.widest_gap(self.web_bars, self.web, self.cage)
+        if self.web.circle_diameter is not None:
+            centre = self.web.circle_diameter / 2
+            r = centre - self.inwards
+            return centre + r * cos(along / r), centre + r * sin(along / r)
         line = self.link_line()
-        along = [0.0]
         for a, b in pairwise((*line, line[0])):
-            along.append(along[-1] + hypot(b[0] - a[0], b[1] - a[1]))
-        feet = sorted(self._foot(bar, line, along) for bar in self.bars if self._touches(bar))
-        if not feet:
-            return line[0]
-        gaps = [(b - a, a) for a, b in pairwise((*feet, feet[0] + along[-1]))]
-        width, start = max(gaps)
-        return self._point_along(line, along, (start + width / 2) % along[-1])
-
-    def _touches(self, bar: Bar) -> bool:
-        edge = self.measured.outline.distance_inside((bar.x, bar.y))
-        return edge <= 1.5 * (self.cage.cover + self.cage.phi_link + bar.diameter)
-
-    def _foot(self, bar: Bar, line: tuple[Point, ...], along: list[float]) -> float:
-        best, place = float("inf"), 0.0
-        for k, (a, b) in enumerate(pairwise((*line, line[0]))):
-            length = hypot(b[0] - a[0], b[1] - a[1]) or 1.0
-            t = ((bar.x - a[0]) * (b[0] - a[0]) + (bar.y - a[1]) * (b[1] - a[1])) / length**2
-            t = min(max(t, 0.0), 1.0)
-            off = hypot(a[0] + t * (b[0] - a[0]) - bar.x, a[1] + t * (b[1] - a[1]) - bar.y)
-            if off < best - 1e-9:
-                best, place = off, along[k] + t * length
-        return place
-
-    def _point_along(self, line: tuple[Point, ...], along: list[float], distance: float) -> Point:
-        for k, (a, b) in enumerate(pairwise((*line, line[0]))):
-            if distance <= along[k + 1] + 1e-9:
-                t = (distance - along[k]) / ((along[k + 1] - along[k]) or 1.0)
-                return a[0] + t * (b[0] - a[0]), a[1] + t * (b[1] - a[1])
+            length = hypot(b[0] - a[0], b[1] - a[1])
+            if along <= length:
+                return a[0] + along / length * (b[0] - a[0]), a[1] + along / length * (b[1] - a[1])
+            along -= length
         return line[0]
 
     def nearest_pair(self) -> Point:
         """Between the two bars that stand nearest for their size."""
-
-        def spare(pair: tuple[Bar, Bar]) -> float:
-            a, b = pair
-            gap = hypot(a.x - b.x, a.y - b.y) - (a.diameter + b.diameter) / 2
-            return gap - max(a.diameter, b.diameter)
-
-        if len(self.bars) < 2:
+        found = details.nearest_pair(self.web_bars)
+        if found is None:
             return self.leg()
-        a, b = min(combinations(self.bars, 2), key=spare)
-        return (a.x + b.x) / 2, (a.y + b.y) / 2
+        a, b = found
+        return (a.x + b.x) / 2 + self.shift, (a.y + b.y) / 2
 
     def chord(self, finding: Finding, *, tension: bool) -> Point:
         """The middle of the tension or the compression row of the finding's first case."""
@@ -168,11 +143,9 @@ class Places:
         return self.web.width / 2 + self.shift, self.web.height / 2
 
     def wall(self) -> Point:
-        """The centre-line of the equivalent wall, at the right of the top."""
-        line = self.wall_line(max(self.measured.inputs["c_axis"], 1.0))
+        """The centre-line of the equivalent wall, at its upper right."""
         return max(
-            line,
-            key=lambda p: atan2(p[1] - self.web.height / 2, p[0] - self.web.width / 2 - self.shift) < 1.2,
+            self.wall_line(max(self.measured.inputs["c_axis"], 1.0)), key=lambda point: point[0] + point[1]
         )
 
 

@@ -19,39 +19,35 @@ MARGIN_LEFT, MARGIN_TOP, MARGIN_RIGHT, MARGIN_BOTTOM = 62.0, 30.0, 62.0, 44.0
 BADGE = 9.0
 
 
-def section_drawing(member: MemberResult, name: str) -> str:
+Marks = list[tuple["Finding", Point]]
+"""Findings with their places on the section, mm."""
+
+
+def section_drawing(member: MemberResult, places: Places, marks: Marks, name: str) -> str:
     """The drawing of one member, its findings as numbered marks that lead to them."""
-    assert member.design is not None
-    assert member.measured is not None
-    places = Places(member.design, member.measured)
-    outline = member.measured.outline
+    outline = places.measured.outline
     scale = ROOM / max(outline.width, outline.height)
     frame = Frame(scale, MARGIN_LEFT, MARGIN_TOP + outline.height * scale)
     width = MARGIN_LEFT + outline.width * scale + MARGIN_RIGHT
     height = MARGIN_TOP + outline.height * scale + MARGIN_BOTTOM
-    marks = list(marked(member, places))
     body = [
         *_concrete(places, frame), *_wall(member, places, frame), *_links(places, frame), *_bars(places, frame),
         *_dimensions(member, places, frame), *_badges(marks, frame),
     ]  # fmt: skip
     title = f"Section of {member.member}"
-    return svg.picture(name, width, height, title, described(member, marks), body, role="group")
+    return svg.picture(name, width, height, title, described(places, marks), body, role="group")
 
 
-def marked(member: MemberResult, places: Places) -> Iterator[tuple[Finding, Point]]:
-    """The findings that have a place on the section, with that place in mm."""
-    for finding in member.findings:
-        place = places.of(finding)
-        if place is not None:
-            yield finding, place
+def marked(member: MemberResult, places: Places) -> Marks:
+    """The findings that have a place on the section, with that place."""
+    found = ((finding, places.of(finding)) for finding in member.findings)
+    return [(finding, place) for finding, place in found if place is not None]
 
 
-def described(member: MemberResult, marks: list[tuple[Finding, Point]]) -> str:
+def described(places: Places, marks: Marks) -> str:
     """The same facts in words."""
-    assert member.design is not None
-    assert member.measured is not None
-    design, inputs = member.design, member.measured.inputs
-    outline = member.measured.outline
+    design, inputs = places.design, places.measured.inputs
+    outline = places.measured.outline
     parts = [
         f"{design.section.shape}, {number(outline.width)} mm wide, {number(outline.height)} mm high, "
         f"cover {number(design.cover.value)} mm"
@@ -174,8 +170,7 @@ def _dimensions(member: MemberResult, places: Places, frame: Frame) -> Iterator[
     yield svg.dimension((x0 - 40, y0), (x0 - 40, y1), f"{number(h)} mm")
     d = member.cases[0].values.get("d") if member.cases else None
     if d and member.cases[0].values.get("hogging"):
-        top = frame.at((0.0, h - (h - d) + 0.0))[1]
-        yield svg.dimension((x1 + 26, y0), (x1 + 26, top), f"d {number(d)} mm")
+        yield svg.dimension((x1 + 26, y0), (x1 + 26, frame.at((0.0, d))[1]), f"d {number(d)} mm")
     elif d:
         yield svg.dimension((x1 + 26, y1), (x1 + 26, frame.at((0.0, h - d))[1]), f"d {number(d)} mm")
     low = frame.at((w * 0.75, cover))
@@ -183,7 +178,7 @@ def _dimensions(member: MemberResult, places: Places, frame: Frame) -> Iterator[
     yield svg.text((low[0] + 3, y0 + 12), f"c {number(cover)} mm", size=10, fill=svg.QUIET)
 
 
-def _badges(marks: list[tuple[Finding, Point]], frame: Frame) -> Iterator[str]:
+def _badges(marks: Marks, frame: Frame) -> Iterator[str]:
     """Numbers on the things they are about; those of one place stand side by side."""
     taken: dict[tuple[int, int], int] = {}
     for finding, place in marks:

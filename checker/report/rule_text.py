@@ -35,7 +35,7 @@ GRAVITY_WORDS = {
 }
 
 
-def rule_text(rule: Rule, annex: str = "recommended") -> str:
+def rule_text(rule: Rule) -> str:
     """One rule explained: clause, what it compares, its formulas, tolerance, gravity, why it matters, its examples."""
     compared = {
         "agrees": [rule.quantity, *rule.or_],
@@ -47,11 +47,11 @@ def rule_text(rule: Rule, annex: str = "recommended") -> str:
         ("what it looks at", title_of(rule)),
         ("clause", rule.clause or "that of the quantity; see samestrut sheet " + rule.quantity),
         ("compares", f"{KIND_WORDS[rule.kind]}: {', '.join(name for name in compared if name)}"),
-        *_formulas(rule, compared, annex),
+        *_formulas(rule, compared),
         ("tolerance", tolerance_text(rule)),
         ("gravity", GRAVITY_WORDS[rule.gravity]),
-        ("applies", _applies(rule, annex)),
-        ("needs", _needs(rule, annex)),
+        ("applies", _applies(rule)),
+        ("needs", _needs(rule)),
         ("why it matters", rule.why),
         ("says", rule.says),
         ("to do", rule.todo),
@@ -69,10 +69,10 @@ def tolerance_text(rule: Rule) -> str:
     return "none"
 
 
-def _quantity(symbol: str, annex: str) -> Quantity | None:
+def _quantity(symbol: str) -> Quantity | None:
     """A quantity under the first shape that has it."""
     for layers in SHAPES:
-        found = sheet_under("EN 1992-1-1:2004", annex, layers).quantities.get(
+        found = sheet_under("EN 1992-1-1:2004", "recommended", layers).quantities.get(
             symbol.removesuffix("_declared")
         )
         if found is not None:
@@ -80,11 +80,11 @@ def _quantity(symbol: str, annex: str) -> Quantity | None:
     return None
 
 
-def _formulas(rule: Rule, compared: list[str], annex: str) -> list[tuple[str, str]]:
+def _formulas(rule: Rule, compared: list[str]) -> list[tuple[str, str]]:
     """A line a quantity compared: its formula, or what it is."""
     lines = []
     for symbol in dict.fromkeys(name for name in compared if name and name != rule.fact):
-        quantity = _quantity(symbol, annex)
+        quantity = _quantity(symbol)
         if quantity is None:
             continue
         if symbol.endswith("_declared"):
@@ -95,18 +95,18 @@ def _formulas(rule: Rule, compared: list[str], annex: str) -> list[tuple[str, st
     return [("formula" if index == 0 else "", line) for index, line in enumerate(lines)]
 
 
-def _applies(rule: Rule, annex: str) -> str:
+def _applies(rule: Rule) -> str:
     if not rule.applies:
         return "always"
-    quantity = _quantity(rule.applies, annex)
+    quantity = _quantity(rule.applies)
     return f"where {quantity.name if quantity else rule.applies}"
 
 
-def _needs(rule: Rule, annex: str) -> str:
+def _needs(rule: Rule) -> str:
     """What a file must hold for the rule to run."""
     needs = [f"one of these declared: {', '.join(rule.declared)}"] if rule.declared else []
     for name in rule.needs:
-        quantity = _quantity(name, annex)
+        quantity = _quantity(name)
         needs.append(f"the key {quantity.note}" if quantity and quantity.note else name)
     return "; ".join(needs) or "nothing more"
 

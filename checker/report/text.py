@@ -150,10 +150,10 @@ def _overview(member: MemberResult) -> str:
             finding.number,
             finding.draft.gravity,
             finding.draft.case or "member",
-            _about(finding),
-            _value(finding, "declared"),
-            _value(finding, "recomputed"),
-            _value(finding, "limit"),
+            about_text(finding),
+            value_text(finding, "declared"),
+            value_text(finding, "recomputed"),
+            value_text(finding, "limit"),
             finding.draft.clause,
         ]
         for finding in member.findings
@@ -162,14 +162,15 @@ def _overview(member: MemberResult) -> str:
     return str(tabulate(rows, heads, tablefmt="plain", disable_numparse=True, maxcolwidths=[None] * 7 + [26]))
 
 
-def _about(finding: Finding) -> str:
+def about_text(finding: Finding) -> str:
     """The declared symbol, else the rule: what a reader can find again in the file or in the catalogue."""
     draft = finding.draft
     stands = draft.declared is not None or draft.declared_text
     return paper(draft.quantity) if draft.quantity and stands else draft.rule
 
 
-def _value(finding: Finding, name: str) -> str:
+def value_text(finding: Finding, name: str) -> str:
+    """One of its numbers (declared, recomputed or limit) with its unit; a dash where there is none."""
     draft = finding.draft
     if name == "declared" and draft.declared is None:
         return draft.declared_text or "–"
@@ -179,13 +180,14 @@ def _value(finding: Finding, name: str) -> str:
 
 def _finding(finding: Finding, file: str, *, workings: bool) -> str:
     draft = finding.draft
-    place = ", ".join(f"{file}:{spot.line}:{spot.column}" for spot in draft.where)
-    names = (draft.case,) if draft.case else draft.cases
+    names = draft.case_names
     case = f"case{'s' if len(names) > 1 else ''} {', '.join(names)}"
     hangs = f", carried from No. {finding.carried_from}" if finding.carried_from else ""
     head = f"No. {finding.number}  {draft.gravity.upper()} ({draft.direction}{hangs})  {draft.rule} [{finding.id}]"
     body = [draft.says, f"To do: {draft.todo}"]
-    facts = "; ".join(filter(None, (f"Clause {draft.clause}" if draft.clause else "", case, place)))
+    facts = "; ".join(
+        filter(None, (f"Clause {draft.clause}" if draft.clause else "", case, draft.places(file)))
+    )
     lines = [head, *(_wrapped(text) for text in body), _wrapped(facts)]
     if workings and draft.wrong_working:
         lines.append(_wrapped("Wrong: " + draft.wrong_working))

@@ -53,6 +53,15 @@ class Draft(NamedTuple):
     cases: tuple[str, ...] = ()
 
     @property
+    def case_names(self) -> tuple[str, ...]:
+        """The case it stands for, or all of those it was found in where it stands for the whole member."""
+        return (self.case,) if self.case else self.cases
+
+    def places(self, file: str) -> str:
+        """Where it stands in the file, as `beam.yaml:12:5`, all places in one line."""
+        return ", ".join(f"{file}:{spot.line}:{spot.column}" for spot in self.where)
+
+    @property
     def ratio(self) -> float | None:
         """Declared over recomputed, or provided over limit."""
         base = self.recomputed if self.declared is not None else self.limit

@@ -79,7 +79,7 @@ def page() -> tuple[str, float, float, float, float]:
     assert size < 6_000_000, size
 
     def bare() -> str:
-        with patch("checker.page.member._drawings", lambda member, index: ""):
+        with patch("checker.page.member._drawings", lambda member, index: ("", set())):
             return html_of(report)
 
     times = alternate(lambda: html_of(report), bare, 5)

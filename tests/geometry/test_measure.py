@@ -19,7 +19,7 @@ KEYS = """h b_least A u kappa A_c y_c t_wall thickness
 reentrant_corners c_axis b_w_sagging b_w_hogging b_t_sagging b_t_hogging cover
 a_s_bottom a_s_top A_s_bottom A_s_top A_half_bottom A_half_top A_s_all phi_link s_perimeter s_links
 n_legs A_sw_s_all A_leg_s S_sin S_cos alpha eta_leg leg_gap gap_bars phi_long_max n_flanges torsion_parts
-clear_least clear_by_size phi_clear phi_corner_least phi_bundle n_bundle phi_single_max phi_link_all phi_least_bottom
+clear_least clear_by_size phi_clear phi_corner_least phi_bundle n_bundle phi_single_max phi_least_bottom
 phi_least_top n_aslant_inner A_enclosing_s A_legs_s A_skin_sagging A_skin_hogging A_side_least mandrel_link
 phi_mandrel_link mandrel_bar phi_mandrel_bar lap_link phi_lap_link lap_link_good"""
 TEE = (
@@ -50,7 +50,7 @@ def test_measured_beam_by_hand(sound_beam):
         "leg_gap": 320, "gap_bars": (645 - 57.5) / 3, "phi_long_max": 25, "n_flanges": 0, "torsion_parts": 0,
         # Four bars of 25 in 400 - 2 x 57.5 mm; a side has its own bars, half a bottom and half a top corner bar.
         "clear_least": 70, "clear_by_size": 70, "phi_clear": 25, "phi_corner_least": 20, "phi_bundle": nan,
-        "n_bundle": nan, "phi_single_max": 25, "phi_link_all": 10, "phi_least_bottom": 25, "phi_least_top": 20,
+        "n_bundle": nan, "phi_single_max": 25, "phi_least_bottom": 25, "phi_least_top": 20,
         "n_aslant_inner": 0, "A_enclosing_s": pi * 50 / 150, "A_legs_s": pi * 50 / 150,
         "A_skin_sagging": 2 * area[12], "A_skin_hogging": 2 * area[12],
         "A_side_least": 2 * area[12] + area[25] / 2 + area[20] / 2,
